@@ -1,0 +1,81 @@
+// What a site's protocol may set, with the rows that ship until it does, and the check that none exceeds its
+// ceiling. `routine` = one signature is enough; `most` = with two signatures; above it a dose is refused.
+
+import { z } from 'zod';
+import { atMost } from '@/shared/values/units';
+import type { Tier } from '@/shared/values/codes';
+import { ceilings } from './ceilings';
+
+const amount = z.number().finite().min(0);
+
+/** Numbers only; whether they are allowed is `siteLimitsAllowed`, so that a refusal can name the ceiling. */
+export const siteLimitsSchema = z.strictObject({
+  routineCurrentMilliamp: amount,
+  mostCurrentMilliamp: amount,
+  routineMinutes: amount,
+  mostMinutes: amount,
+  routineChargeCoulomb: amount,
+  mostChargeCoulomb: amount,
+  routineDensityMilliampPerSquareCentimetre: amount,
+  mostDensityMilliampPerSquareCentimetre: amount,
+  /** A smaller pad needs a second signature. */
+  routineAreaSquareCentimetre: amount,
+  routineSessionsPerDay: z.number().int().min(1).max(10),
+  mostMinutesPerDay: amount,
+  /** A shorter gap needs a second signature; below `leastGapHours` it is refused. */
+  routineGapHours: amount,
+  leastGapHours: amount,
+  routineCharge24hCoulomb: amount,
+  mostCharge24hCoulomb: amount,
+  routineCharge7dCoulomb: amount,
+  mostCharge7dCoulomb: amount,
+  /** Most current under 18 years; null = this site treats no minors. */
+  minorCurrentMilliamp: amount.nullable(),
+  /** The one row for small gel electrodes is switched on. */
+  allowsRings: z.boolean(),
+});
+export type SiteLimits = z.infer<typeof siteLimitsSchema>;
+
+/** Shipped rows: guidance on home stimulation §6. All numbers own choices under the ceilings unless noted. */
+export const defaultSiteLimits: SiteLimits = {
+  // 1 to 2 mA is the classic range (Bikson, Datta, Elwassif 2009).
+  routineCurrentMilliamp: 2,
+  mostCurrentMilliamp: ceilings.currentMilliamp.value,
+  routineMinutes: 30,
+  mostMinutes: ceilings.minutes.value,
+  routineChargeCoulomb: 3.6,
+  mostChargeCoulomb: ceilings.chargeCoulomb.value,
+  // 2 mA on 25 cm².
+  routineDensityMilliampPerSquareCentimetre: 0.08,
+  mostDensityMilliampPerSquareCentimetre: ceilings.densityMilliampPerSquareCentimetre.value,
+  // 25 to 35 cm² is the classic range (Bikson, Datta, Elwassif 2009).
+  routineAreaSquareCentimetre: 25,
+  routineSessionsPerDay: 1,
+  mostMinutesPerDay: ceilings.minutesPerDay.value,
+  routineGapHours: 20,
+  leastGapHours: ceilings.leastGapHours.value,
+  // Two sessions at the routine limit: a 20 h gap lets two fall into one 24 h window.
+  routineCharge24hCoulomb: 7.2,
+  mostCharge24hCoulomb: ceilings.charge24hCoulomb.value,
+  routineCharge7dCoulomb: 25.2,
+  mostCharge7dCoulomb: ceilings.charge7dCoulomb.value,
+  minorCurrentMilliamp: null,
+  allowsRings: false,
+};
+
+export type SiteLimitFinding = {
+  readonly field: keyof SiteLimits;
+  readonly code: 'above_ceiling' | 'below_ceiling' | 'routine_above_most';
+  readonly value: number;
+  readonly limit: number;
+  readonly layer: 'ceiling' | 'site';
+  readonly source: string;
+};
+
+export declare function siteLimitsAllowed(limits: Partial<SiteLimits>): SiteLimitFinding[];
+
+/** Rolling limits that hold for a prescription of this tier, in C and min. */
+export declare function rollingLimitsOf(
+  limits: SiteLimits,
+  tier: Tier,
+): { maxCharge24hCoulomb: number; maxCharge7dCoulomb: number; maxMinutes24h: number };
