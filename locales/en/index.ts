@@ -1,0 +1,44 @@
+/**
+ * All English words that the client may load, by namespace. It must not hold `mail`, whose words only the server sends.
+ */
+import audit from './audit.json';
+import caregiver from './caregiver.json';
+import clearance from './clearance.json';
+import common from './common.json';
+import course from './course.json';
+import device from './device.json';
+import diary from './diary.json';
+import errors from './errors.json';
+import forms from './forms.json';
+import messages from './messages.json';
+import participant from './participant.json';
+import participants from './participants.json';
+import prescription from './prescription.json';
+import protocol from './protocol.json';
+import publicWords from './public.json';
+import session from './session.json';
+import site from './site.json';
+import staff from './staff.json';
+import worklist from './worklist.json';
+
+export const en = {
+  audit,
+  caregiver,
+  clearance,
+  common,
+  course,
+  device,
+  diary,
+  errors,
+  forms,
+  messages,
+  participant,
+  participants,
+  prescription,
+  protocol,
+  public: publicWords,
+  session,
+  site,
+  staff,
+  worklist,
+};
