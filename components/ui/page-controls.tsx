@@ -127,3 +127,22 @@ export function PageInput(props: PageInputProps) {
 export function PageLabel({ controlId, children }: { controlId: string; children: ReactNode }) {
   return <label htmlFor={controlId}>{children}</label>;
 }
+
+/** Leads past the navigation to the content; seen only while it has the focus (style sheet, `.skip-link`). */
+export function PageAnchor({ targetId, children }: { targetId: string; children: ReactNode }) {
+  return (
+    <a
+      className="skip-link"
+      href={`#${targetId}`}
+      onClick={(event) => {
+        // The address stays as it is: a mark behind it would be taken for a new page.
+        event.preventDefault();
+        const target = document.getElementById(targetId);
+        target?.setAttribute('tabindex', '-1');
+        target?.focus();
+      }}
+    >
+      {children}
+    </a>
+  );
+}
