@@ -1,0 +1,2 @@
+// Door: shows StaffAccountScreen, no more.
+export { StaffAccountScreen as default } from '@/components/features/account/StaffAccountScreen';

@@ -1,0 +1,2 @@
+// Door: shows ConsentScreen, no more.
+export { ConsentScreen as default } from '@/components/features/consent/ConsentScreen';

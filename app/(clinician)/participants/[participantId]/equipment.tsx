@@ -1,0 +1,2 @@
+// Door: shows EquipmentScreen, no more.
+export { EquipmentScreen as default } from '@/components/features/device/EquipmentScreen';

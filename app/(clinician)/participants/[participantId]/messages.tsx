@@ -1,0 +1,2 @@
+// Door: shows ThreadScreen, no more.
+export { ThreadScreen as default } from '@/components/features/message/ThreadScreen';

@@ -1,0 +1,2 @@
+// Door: shows TrainingScreen, no more.
+export { TrainingScreen as default } from '@/components/features/training/TrainingScreen';

@@ -1,0 +1,2 @@
+// Door: shows ParticipantsScreen, no more.
+export { ParticipantsScreen as default } from '@/components/features/participant/ParticipantsScreen';

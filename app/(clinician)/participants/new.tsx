@@ -1,0 +1,2 @@
+// Door: shows EnrolScreen, no more.
+export { EnrolScreen as default } from '@/components/features/participant/EnrolScreen';

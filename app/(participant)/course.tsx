@@ -1,0 +1,2 @@
+// Door: shows CourseScreen, no more.
+export { CourseScreen as default } from '@/components/features/course/CourseScreen';

@@ -1,0 +1,2 @@
+// Door: shows CaregiversScreen, no more.
+export { CaregiversScreen as default } from '@/components/features/caregiver/CaregiversScreen';

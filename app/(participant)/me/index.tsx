@@ -1,0 +1,2 @@
+// Door: shows MyScreen, no more.
+export { MyScreen as default } from '@/components/features/account/MyScreen';

@@ -1,0 +1,2 @@
+// Door: shows SetUpScreen, no more.
+export { SetUpScreen as default } from '@/components/features/session/SetUpScreen';

@@ -1,0 +1,2 @@
+// Door: shows DemoMailScreen, no more.
+export { DemoMailScreen as default } from '@/components/features/demo/DemoMailScreen';

@@ -1,0 +1,2 @@
+// Door: shows SecondFactorScreen, no more.
+export { SecondFactorScreen as default } from '@/components/features/account/SecondFactorScreen';

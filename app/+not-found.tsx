@@ -1,0 +1,2 @@
+// Any address that is no door.
+export { NotFoundPage as default } from '@/components/layout/NotFoundPage';

@@ -1,0 +1,2 @@
+// The one door at `/`: sends each role to its first page.
+export { HomeDoor as default } from '@/components/layout/HomeDoor';

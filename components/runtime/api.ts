@@ -1,0 +1,141 @@
+// The typed way to the server: one call a contract, reads cached by its name, writes marking what they touch as stale.
+// It never decides; a refusal comes back as ApiProblem with the server's reasons.
+
+import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import type { AnswerOf, BodyIn, ContractShape, ParamsIn, QueryIn } from '@/shared/contracts/contract';
+import { Problem } from '@/shared/contracts/problem';
+
+export class ApiProblem extends Error {
+  constructor(
+    readonly problem: Problem,
+    /** True when no answer came at all: nothing is known of what the server did. */
+    readonly offline: boolean,
+  ) {
+    super(problem.detail);
+    this.name = 'ApiProblem';
+  }
+}
+
+export interface CallInput<C extends ContractShape> {
+  params?: ParamsIn<C>;
+  query?: QueryIn<C>;
+  body?: BodyIn<C>;
+  /** Idempotency key; make it once a wish, not once a try. */
+  key?: string;
+  file?: Blob;
+  signal?: AbortSignal;
+}
+
+const offlineProblem: Problem = { type: 'about:blank', title: 'offline', status: 0, detail: 'offline', code: 'offline', requestId: '' };
+
+function addressOf(path: string, params: unknown, query: unknown): string {
+  const filled = path.replace(/:([A-Za-z]+)/g, (_whole, name: string) => encodeURIComponent(String(valueOf(params, name) ?? '')));
+  const search = new URLSearchParams();
+  if (typeof query === 'object' && query !== null) {
+    for (const [name, value] of Object.entries(query)) if (value !== undefined && value !== null) search.set(name, String(value));
+  }
+  const text = search.toString();
+  return text ? `${filled}?${text}` : filled;
+}
+
+function valueOf(object: unknown, name: string): unknown {
+  return typeof object === 'object' && object !== null ? Object.getOwnPropertyDescriptor(object, name)?.value : undefined;
+}
+
+function payloadOf(body: unknown, file: Blob | undefined): { payload?: string | FormData; type?: string } {
+  if (file) {
+    const form = new FormData();
+    if (typeof body === 'object' && body !== null) for (const [name, value] of Object.entries(body)) form.set(name, String(value));
+    form.set('file', file);
+    return { payload: form };
+  }
+  return body === undefined ? {} : { payload: JSON.stringify(body), type: 'application/json' };
+}
+
+/**
+ * Calls one door. Throws ApiProblem for every answer that is not the contract's, `offline` when none came.
+ */
+export async function callDoor<C extends ContractShape>(contract: C, input: CallInput<C> = {}): Promise<AnswerOf<C>> {
+  const { payload, type } = payloadOf(input.body, input.file);
+  const headers: Record<string, string> = { accept: 'application/json' };
+  if (type) headers['content-type'] = type;
+  if (input.key) headers['idempotency-key'] = input.key;
+  let response: Response;
+  try {
+    response = await fetch(addressOf(contract.path, input.params, input.query), {
+      method: contract.method,
+      headers,
+      credentials: 'same-origin',
+      ...(payload === undefined ? {} : { body: payload }),
+      ...(input.signal ? { signal: input.signal } : {}),
+    });
+  } catch {
+    throw new ApiProblem(offlineProblem, true);
+  }
+  const answer: unknown = await response.json().catch(() => undefined);
+  if (!response.ok) {
+    const problem = Problem.safeParse(answer);
+    const status = response.status;
+    throw new ApiProblem(problem.success ? problem.data : { ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
+  }
+  // The contract's schema types the answer: what does not fit is a fault of the server, not something to show half of.
+  const parsed = contract.answer.safeParse(answer);
+  if (!parsed.success) throw new ApiProblem({ ...offlineProblem, status: response.status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
+  return parsed.data as AnswerOf<C>;
+}
+
+/** Key of a read: the noun first, so that a write can mark a whole noun stale. */
+export function keyOf(contract: ContractShape, params?: unknown, query?: unknown): readonly unknown[] {
+  const noun = contract.name.split('.')[0];
+  return [noun, contract.name, params ?? null, query ?? null];
+}
+
+export interface ReadInput<C extends ContractShape> {
+  params?: ParamsIn<C>;
+  query?: QueryIn<C>;
+  enabled?: boolean;
+  /** Read again after so many milliseconds while the screen is shown. */
+  everyMs?: number;
+}
+
+/** Reads one door and keeps the answer by its contract's name. */
+export function useRead<C extends ContractShape>(contract: C, input: ReadInput<C> = {}) {
+  return useQuery<AnswerOf<C>, ApiProblem>({
+    queryKey: keyOf(contract, input.params, input.query),
+    queryFn: ({ signal }) => callDoor(contract, { params: input.params, query: input.query, signal }),
+    enabled: input.enabled ?? true,
+    ...(input.everyMs ? { refetchInterval: input.everyMs } : {}),
+  });
+}
+
+type Page<C extends ContractShape> = AnswerOf<C> & { nextCursor: string | null };
+
+function cursorOf(page: unknown): string | undefined {
+  const cursor = valueOf(page, 'nextCursor');
+  return typeof cursor === 'string' ? cursor : undefined;
+}
+
+/** Reads a list a page at a time: `data.pages[].items`, `fetchNextPage`, `hasNextPage`. */
+export function usePages<C extends ContractShape>(contract: C, input: ReadInput<C> = {}) {
+  return useInfiniteQuery<Page<C>, ApiProblem, { pages: Page<C>[] }, readonly unknown[], string | undefined>({
+    queryKey: [...keyOf(contract, input.params, input.query), 'pages'],
+    queryFn: async ({ pageParam, signal }) => {
+      const paged: unknown = { ...(input.query ?? {}), ...(pageParam ? { cursor: pageParam } : {}) };
+      return (await callDoor(contract, { params: input.params, query: paged as QueryIn<C>, signal })) as Page<C>;
+    },
+    initialPageParam: undefined,
+    getNextPageParam: cursorOf,
+    enabled: input.enabled ?? true,
+  });
+}
+
+/** A write: `mutateAsync({params, body, key})`; afterwards everything its contract touches is stale. */
+export function useCall<C extends ContractShape>(contract: C) {
+  const queries = useQueryClient();
+  return useMutation<AnswerOf<C>, ApiProblem, CallInput<C>>({
+    mutationFn: (input) => callDoor(contract, input),
+    onSuccess: async () => {
+      await Promise.all((contract.touches ?? []).map((noun) => queries.invalidateQueries({ queryKey: [noun] })));
+    },
+  });
+}
