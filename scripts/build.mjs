@@ -76,7 +76,8 @@ export async function buildWeb(say) {
 }
 
 if (process.argv[1] === fileURLToPath(import.meta.url)) {
-  await main(async () => {
+  // Not awaited: Jest's set-up loads this file by `require`, which cannot wait.
+  void main(async () => {
     checkNode();
     await installPackages(console.log);
     const which = process.argv[2];

@@ -96,8 +96,8 @@ function watchNpm() {
 }
 
 /** Runs a script's main function: signals and failures both pass through `end`. */
-export async function main(work) {
-  for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => void end(0));
+export async function main(work, { whenAskedToStop = 0 } = {}) {
+  for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => void end(whenAskedToStop));
   if (process.env.npm_lifecycle_event) watchNpm();
   try {
     await work();

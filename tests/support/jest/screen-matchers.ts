@@ -1,0 +1,4 @@
+// What: lets a screen test say `expect(await axe(container)).toHaveNoViolations()`.
+import { toHaveNoViolations } from 'jest-axe';
+
+expect.extend(toHaveNoViolations);
