@@ -2,6 +2,7 @@
 
 import type { Db } from '@/db/client';
 import type { AnswerOf, BodyOf, ContractShape, ParamsOf, QueryOf } from '@/shared/contracts/contract';
+import type { Reason } from '@/shared/contracts/problem';
 import type { OutboxKind } from '@/shared/values/outbox-kinds';
 import type { Role } from '@/shared/values/roles';
 
@@ -74,6 +75,16 @@ export interface Tx {
    * server/mail-stop.ts); the database holds its SHA-256 alone.
    */
   stopTokenFor(caregiverId: string): string;
+  /** Keeps small secrets (the permits' signing key) under a key derived from the server's secret: `vaultOf` of server/vault.ts. */
+  readonly vault: Vault;
+  /** Rules' reasons with the sentence and the contact that a refusal's reasons get, for answers that carry reasons. */
+  explain(reasons: readonly BareReason[], participantId: string): Promise<Reason[]>;
+}
+
+export interface Vault {
+  seal(bytes: Uint8Array): string;
+  /** Throws for what this server's secret did not seal. */
+  open(sealed: string): Uint8Array;
 }
 
 /** A reason as rules give it; the http layer adds the sentence and the contact. */
