@@ -1,111 +1,109 @@
-// Dose arithmetic and its judgement against the tiers. Total: any shape gives an answer; what is not known refuses.
+// Judges a prescribed dose against the tiers. Total: any shape gives an answer; what is not known refuses; nothing
+// is ever clamped. The arithmetic stands in dose/arithmetic.ts, each row in dose/rows.ts.
 
-import type {
-  AmplitudeMeaning,
-  DoseQuantity,
-  ElectrodeShape,
-  LimitLayer,
-  Polarity,
-  Tier,
-  Waveform,
-} from '@/shared/values/codes';
-import type { SiteLimits } from './site-limits';
+import { tiers, type Tier, type Waveform } from '@/shared/values/codes';
+import { halfCycleCharge, rmsOf } from './dose/arithmetic';
+import type { ComputedDose, DoseFacts, DoseJudgement, DoseRow, ElectrodeFacts } from './dose/facts';
+import { readDose, type ReadDose } from './dose/read';
+import {
+  areaRow,
+  chargeRow,
+  currentRow,
+  dayMinutesRow,
+  densityRow,
+  frequencyRow,
+  gapRow,
+  minorRow,
+  minutesRow,
+  perDayRow,
+  rampRow,
+  ringRow,
+  sharesRow,
+  siteLimitRows,
+  unknownRows,
+} from './dose/rows';
+import { withDefaults, type SiteLimits } from './site-limits';
 
-export type TrapezoidFacts = {
+export type { ComputedDose, DoseFacts, DoseJudgement, DoseRow, ElectrodeFacts, TrapezoidFacts } from './dose/facts';
+export { chargeOf, densityOf, halfCycleCharge, minutesOn, peakOf, rmsOf } from './dose/arithmetic';
+
+function largest(values: readonly (number | undefined)[]): number | undefined {
+  let most: number | undefined;
+  for (const value of values) {
+    if (value === undefined) return undefined;
+    most = most === undefined ? value : Math.max(most, value);
+  }
+  return most;
+}
+
+function computedOf(facts: DoseFacts | undefined, dose: ReadDose): ComputedDose {
+  const { waveform, amplitudePeakMilliamp: amplitude, frequencyHertz } = dose;
+  const isAlternating = waveform === 'tACS' || waveform === 'tRNS';
+  return {
+    peakMilliamp: dose.peakMilliamp,
+    peakToPeakMilliamp: isAlternating && amplitude !== undefined ? 2 * amplitude : undefined,
+    rmsMilliamp: isAlternating && facts !== undefined ? rmsOf(facts) : undefined,
+    minutes: dose.minutes,
+    chargeCoulomb: dose.chargeCoulomb,
+    maxDensityMilliampPerSquareCentimetre: largest((dose.electrodes ?? []).map(({ density }) => density)),
+    halfCycleChargeMicrocoulomb:
+      amplitude !== undefined && frequencyHertz !== undefined && frequencyHertz > 0
+        ? halfCycleCharge(amplitude, frequencyHertz) * 1_000_000
+        : undefined,
+  };
+}
+
+export function worstTier(of: readonly Tier[]): Tier {
+  return of.reduce<Tier>((worst, tier) => (tiers.indexOf(tier) > tiers.indexOf(worst) ? tier : worst), 'accept');
+}
+
+/** The dose of a prescription form: `intensityMilliamp` is baseline to peak. */
+export function doseFactsOf(dose: {
+  readonly waveform: Waveform;
   readonly intensityMilliamp: number;
   readonly rampUpSeconds: number;
   readonly holdSeconds: number;
   readonly rampDownSeconds: number;
-};
+  readonly electrodes: readonly ElectrodeFacts[];
+  readonly sessionsPerDay: number;
+  readonly minGapHours: number;
+}): DoseFacts {
+  const { intensityMilliamp, ...rest } = dose;
+  return { ...rest, amplitude: { valueMilliamp: intensityMilliamp, meaning: 'peak' } };
+}
 
-export type ElectrodeFacts = {
-  readonly position?: string;
-  readonly polarity?: Polarity;
-  readonly shape?: ElectrodeShape;
-  readonly areaSquareCentimetre?: number;
-  /** Part of the total current of its polarity, 0 to 1. */
-  readonly share?: number;
-};
-
-export type DoseFacts = {
-  readonly waveform?: Waveform;
-  readonly amplitude?: {
-    readonly valueMilliamp?: number;
-    readonly meaning?: AmplitudeMeaning;
-    /** tRNS given by r.m.s.: the peak at which the generator clips. */
-    readonly peakMilliamp?: number;
-  };
-  /** 0 if absent. */
-  readonly offsetMilliamp?: number;
-  readonly holdSeconds?: number;
-  readonly rampUpSeconds?: number;
-  readonly rampDownSeconds?: number;
-  readonly frequencyHertz?: number;
-  readonly bandHertz?: readonly [number, number];
-  readonly sessionsPerDay?: number;
-  readonly minGapHours?: number;
-  readonly electrodes?: readonly ElectrodeFacts[];
-};
-
-export type DoseRow = {
-  readonly quantity: DoseQuantity;
-  readonly tier: Tier;
-  readonly value?: number;
-  readonly unit: string;
-  /** One signature up to here (`at_most`) or from here on (`at_least`). */
-  readonly routineLimit?: number;
-  /** The site's limit with two signatures. */
-  readonly siteLimit?: number;
-  readonly ceiling?: number;
-  readonly direction: 'at_most' | 'at_least';
-  /** The layer of the limit that decides the tier. */
-  readonly layer?: LimitLayer;
-  readonly source: string;
-  /** What is not known, or what a site would have to set. */
-  readonly fact?: string;
-  readonly electrode?: string;
-};
-
-export type ComputedDose = {
-  readonly peakMilliamp?: number;
-  readonly peakToPeakMilliamp?: number;
-  readonly rmsMilliamp?: number;
-  readonly minutes?: number;
-  readonly chargeCoulomb?: number;
-  readonly maxDensityMilliampPerSquareCentimetre?: number;
-  readonly halfCycleChargeMicrocoulomb?: number;
-};
-
-export type DoseJudgement = {
-  readonly verdict: Tier;
-  /** Every row that could be judged, in a fixed order. */
-  readonly rows: readonly DoseRow[];
-  /** The rows above `accept`. */
-  readonly over: readonly DoseRow[];
-  readonly computed: ComputedDose;
-};
-
-export declare function chargeOf(dose: TrapezoidFacts): number;
-export declare function minutesOn(dose: Omit<TrapezoidFacts, 'intensityMilliamp'>): number;
-export declare function densityOf(milliamp: number, areaSquareCentimetre: number): number;
-export declare function halfCycleCharge(peakMilliamp: number, frequencyHertz: number): number;
-export declare function peakOf(dose: DoseFacts): number | undefined;
-export declare function rmsOf(dose: DoseFacts): number | undefined;
-/** The dose of a contract's form: `intensityMilliamp` is the peak. */
-export declare function doseFactsOf(dose: {
-  waveform: Waveform;
-  intensityMilliamp: number;
-  rampUpSeconds: number;
-  holdSeconds: number;
-  rampDownSeconds: number;
-  electrodes: readonly ElectrodeFacts[];
-  sessionsPerDay: number;
-  minGapHours: number;
-}): DoseFacts;
-export declare function judgeDose(
-  dose: DoseFacts | undefined,
+/**
+ * Every row with its value and limits, the worst tier as verdict. `siteLimits` may be partial: the shipped rows hold
+ * wherever a site has set none.
+ */
+export function judgeDose(
+  facts: DoseFacts | undefined,
   ageYears: number | undefined,
   siteLimits?: Partial<SiteLimits>,
-): DoseJudgement;
-/** Full years on a local day. Born 29 February: a year older on 1 March (own choice). */
-export declare function ageYearsOn(bornOn: string, localDate: string): number | undefined;
+): DoseJudgement {
+  const limits = withDefaults(siteLimits);
+  const dose = readDose(facts, ageYears);
+  const rows: DoseRow[] = [
+    ...currentRow(dose, limits),
+    ...minutesRow(dose, limits),
+    ...chargeRow(dose, limits),
+    ...densityRow(dose, limits),
+    ...areaRow(dose, limits),
+    ...perDayRow(dose, limits),
+    ...dayMinutesRow(dose, limits),
+    ...gapRow(dose, limits),
+    ...rampRow(dose),
+    ...frequencyRow(dose),
+    ...minorRow(dose, limits),
+    ...ringRow(dose, limits),
+    ...sharesRow(dose),
+    ...siteLimitRows(limits),
+    ...unknownRows(dose),
+  ];
+  return {
+    verdict: worstTier(rows.map(({ tier }) => tier)),
+    rows,
+    over: rows.filter(({ tier }) => tier !== 'accept'),
+    computed: computedOf(facts, dose),
+  };
+}

@@ -1,61 +1,17 @@
-// The pre-check: its questions as data, the outcome of each answer, and what follows from all of them.
+// The pre-check as a whole: which questions are still open, the worst outcome, and what is stored and told because
+// of it. An emergency answer acts at once, however much is open.
 
-import { z } from 'zod';
-import type { PrecheckFindingCode, PrecheckLockoutCode, PrecheckOutcome, Waveform } from '@/shared/values/codes';
+import { precheckOutcomes, type PrecheckLockoutCode, type PrecheckOutcome } from '@/shared/values/codes';
+import { isoOf, parseInstant } from '@/shared/values/zone';
+import { holdUntilTomorrow } from './hold';
+import { precheckAnswersSchema, type PrecheckAnswers } from './precheck/answers';
+import { precheckFindings, type PrecheckContext, type PrecheckFinding } from './precheck/findings';
+import { precheckQuestions } from './precheck/questions';
 
-const sinceLast = z.enum(['no', 'today', 'earlier']);
-export const moodChoices = ['very_low', 'agitated', 'racing', 'self_harm_thoughts'] as const;
-/** Answers as sent. Every field may be absent: then that question is still open. */
-export const precheckAnswersSchema = z.strictObject({
-  seizure: sinceLast.optional(),
-  faint: sinceLast.optional(),
-  headInjury: sinceLast.optional(),
-  implantOrMetal: z.boolean().optional(),
-  skin: z.enum(['ok', 'sore', 'broken', 'shaved_raw']).optional(),
-  pregnancyChance: z.boolean().optional(),
-  /** Empty = none of them. */
-  mood: z.array(z.enum(moodChoices)).max(moodChoices.length).optional(),
-  headache: z.number().int().min(0).max(10).optional(),
-  sleptHours: z.number().min(0).max(24).optional(),
-  drinksLast12h: z.number().int().min(0).max(50).optional(),
-  drinks12To24h: z.number().int().min(0).max(50).optional(),
-  feelsAlcohol: z.boolean().optional(),
-  drugs24h: z.boolean().optional(),
-  newMedicine: z.enum(['none', 'other', 'threshold_list']).optional(),
-  unwell: z.boolean().optional(),
-  temperatureCelsius: z.number().min(30).max(45).optional(),
-  helperPresent: z.boolean().optional(),
-  ready: z.boolean().optional(),
-});
-export type PrecheckAnswers = z.infer<typeof precheckAnswersSchema>;
-export type PrecheckField = keyof PrecheckAnswers;
+export { moodChoices, precheckAnswersSchema, type PrecheckAnswers, type PrecheckField } from './precheck/answers';
+export type { PrecheckContext, PrecheckFinding } from './precheck/findings';
+export { precheckQuestions, type PrecheckQuestion } from './precheck/questions';
 
-export type PrecheckQuestion = {
-  /** Stable, snake_case; `open` names it. */
-  readonly id: string;
-  readonly field: PrecheckField;
-  /** Questions of one page stand together; the progress counts pages. */
-  readonly page: string;
-  readonly kind: 'since_last' | 'yes_no' | 'choice' | 'choices' | 'scale' | 'number';
-  readonly choices?: readonly string[];
-  readonly min?: number;
-  readonly max?: number;
-  readonly step?: number;
-  readonly unit?: 'hours' | 'drinks' | 'celsius';
-  readonly isOptional?: true;
-  /** A protocol may not remove it. */
-  readonly isFixed: boolean;
-  /** Asked only once this other answer is given so. */
-  readonly onlyIf?: { readonly field: PrecheckField; readonly is: boolean };
-};
-export type PrecheckContext = {
-  /** Unknown is read the strict way in all four. */
-  readonly waveform?: Waveform;
-  readonly hasSeizureHistory?: boolean;
-  readonly excludesPregnancy?: boolean;
-  readonly zone?: string;
-};
-export type PrecheckFinding = { readonly code: PrecheckFindingCode; readonly outcome: PrecheckOutcome };
 export type PrecheckJudgement = {
   readonly complete: boolean;
   readonly open: readonly string[];
@@ -72,19 +28,80 @@ export type PrecheckJudgement = {
   readonly worklist: boolean;
 };
 
-export declare function precheckQuestions(facts: {
-  excludesPregnancy?: boolean;
-  waveform?: Waveform;
-  assistedOrMinor?: boolean;
-}): PrecheckQuestion[];
-export declare function judgePrecheck(
+/** The worst of the findings; `go_on` without any. */
+function worstOf(findings: readonly PrecheckFinding[]): PrecheckOutcome {
+  return findings.reduce<PrecheckOutcome>(
+    (worst, { outcome }) => (precheckOutcomes.indexOf(outcome) > precheckOutcomes.indexOf(worst) ? outcome : worst),
+    'go_on',
+  );
+}
+
+/** Ids of the questions that are asked and not answered. The helper is asked too, but blocks by clearance. */
+function openQuestions(answers: PrecheckAnswers, context: PrecheckContext): string[] {
+  return precheckQuestions({ ...context, assistedOrMinor: false })
+    .filter(({ isOptional }) => isOptional !== true)
+    .filter(({ field }) => (field === 'ready' ? answers.ready !== true : answers[field] === undefined))
+    .map(({ id }) => id);
+}
+
+function lockoutsOf(
+  findings: readonly PrecheckFinding[],
+  complete: boolean,
+  context: PrecheckContext,
+  answeredAt: string,
+): PrecheckJudgement['lockouts'] {
+  const first = (outcome: PrecheckOutcome) => findings.find((finding) => finding.outcome === outcome);
+  const emergency = first('emergency');
+  const lockouts: PrecheckJudgement['lockouts'][number][] = [];
+  if (emergency !== undefined) lockouts.push({ level: 'safety', code: `precheck_${emergency.code}` });
+  if (!complete) return lockouts;
+  const toReview = first('hold_review');
+  if (toReview !== undefined) lockouts.push({ level: 'review', code: `precheck_${toReview.code}` });
+  const toWait = first('hold_tomorrow');
+  if (toWait !== undefined) {
+    const answered = parseInstant(answeredAt);
+    const until = answered === undefined ? undefined : isoOf(holdUntilTomorrow(answered, context.zone));
+    // A hold whose end cannot be told stays shut: clearance refuses on the missing fact.
+    lockouts.push({ level: 'hold', code: `precheck_${toWait.code}`, ...(until === undefined ? {} : { until }) });
+  }
+  return lockouts;
+}
+
+/** `answeredAt` is the server's clock when the answers came, ISO UTC. */
+export function judgePrecheck(
   answers: PrecheckAnswers,
   context: PrecheckContext,
   answeredAt: string,
-): PrecheckJudgement;
-/** Outcome and findings of one answer alone, for showing at once. */
-export declare function consequenceOf(
+): PrecheckJudgement {
+  const findings = precheckFindings(answers, context);
+  const open = openQuestions(answers, context);
+  const complete = open.length === 0;
+  const isEmergency = findings.some(({ outcome }) => outcome === 'emergency');
+  return {
+    complete,
+    open,
+    outcome: complete ? worstOf(findings) : null,
+    findings,
+    lockouts: lockoutsOf(findings, complete, context, answeredAt),
+    emergencyAdvice: isEmergency,
+    pageStaff: isEmergency,
+    worklist: findings.some(
+      ({ code, outcome }) => code === 'new_medicine' || outcome === 'hold_review' || outcome === 'emergency',
+    ),
+  };
+}
+
+/**
+ * Outcome and findings of one answer alone, for showing at once. A value that is no answer to the question has none.
+ * The worst of all answers decides; this only explains.
+ */
+export function consequenceOf(
   questionId: string,
   value: unknown,
   context: PrecheckContext,
-): { outcome: PrecheckOutcome; findings: readonly PrecheckFinding[] };
+): { readonly outcome: PrecheckOutcome; readonly findings: readonly PrecheckFinding[] } {
+  const question = precheckQuestions({}).find(({ id }) => id === questionId);
+  const answers = question && precheckAnswersSchema.safeParse({ [question.field]: value });
+  const findings = answers?.success === true ? precheckFindings(answers.data, context) : [];
+  return { outcome: worstOf(findings), findings };
+}

@@ -1,0 +1,52 @@
+// Clearance: the prescription's state, the course's count, and open lockouts.
+
+import { lockoutLevels } from '@/shared/values/codes';
+import { isoOf } from '@/shared/values/zone';
+import type { ClearanceContext } from './context';
+import { reason, when, type Reason } from './reason';
+
+export function prescriptionReasons({ facts, known, now }: ClearanceContext): Reason[] {
+  const prescription = known.some('prescription', facts.prescription);
+  const status = known.word('prescription.status', prescription?.status, ['none', 'draft', 'signed']);
+  if (status === 'none') return [reason('prescription_unsigned')];
+  // A tier of `refuse` cannot be signed; if it stands there, the fact cannot be meant.
+  const tier = known.word('prescription.tier', prescription?.tier, ['accept', 'second_signature']);
+  const hasSecond = known.flag('prescription.second_signature', prescription?.hasSecondSignature);
+  const isPaused = known.flag('prescription.paused', prescription?.isPaused);
+  const expiresAt = known.instant('prescription.expires_at', prescription?.expiresAt);
+  const version = known.amount('prescription.version', prescription?.version);
+  const acknowledged = known.amount('prescription.acknowledged_version', prescription?.acknowledgedVersion);
+  const isBehind = version !== undefined && acknowledged !== undefined && version > acknowledged;
+  return [
+    ...when(status === 'draft', 'prescription_unsigned'),
+    ...when(tier === 'second_signature' && hasSecond === false, 'second_signature_missing'),
+    ...when(isPaused === true, 'prescription_paused'),
+    ...when(expiresAt !== undefined && expiresAt <= now, 'prescription_expired'),
+    ...when(isBehind, 'prescription_unacknowledged'),
+  ];
+}
+
+export function courseReasons({ facts, known }: ClearanceContext): Reason[] {
+  const prescription = facts.prescription;
+  if (prescription === undefined || prescription.status === 'none') return [];
+  const value = known.amount('prescription.sessions_done', prescription.sessionsDone);
+  const limit = known.amount('prescription.sessions_total', prescription.sessionsTotal);
+  const isDone = value !== undefined && limit !== undefined && value >= limit;
+  return when(isDone, 'course_complete', { value, limit, layer: 'prescription' });
+}
+
+/** One reason for each open lockout. A hold ends by itself; a flag blocks nothing. */
+export function lockoutReasons({ facts, known, now }: ClearanceContext): Reason[] {
+  const reasons: Reason[] = [];
+  for (const [index, lockout] of (known.some('lockouts', facts.lockouts) ?? []).entries()) {
+    const subject = lockout.code;
+    const level = known.word(`lockouts.${index}.level`, lockout.level, lockoutLevels);
+    if (level === 'safety') reasons.push(reason('lockout_safety', { subject }));
+    if (level === 'review') reasons.push(reason('lockout_review', { subject }));
+    if (level === 'device') reasons.push(reason('lockout_device', { subject }));
+    if (level !== 'hold') continue;
+    const until = known.instant(`lockouts.${index}.until`, lockout.until);
+    if (until !== undefined && until > now) reasons.push(reason('lockout_hold', { subject, until: isoOf(until) }));
+  }
+  return reasons;
+}

@@ -1,0 +1,78 @@
+// One reason why a session may not start, and who can take it out of the way.
+
+import type { LimitLayer, ReasonCode, Resolver } from '@/shared/values/codes';
+
+export type Reason = {
+  readonly code: ReasonCode;
+  /** When this reason alone passes by itself, ISO UTC. */
+  readonly until?: string;
+  /** Of `unknown_fact`: what is missing, in the stable dotted names. */
+  readonly fact?: string;
+  readonly resolvedBy: Resolver;
+  /** What it is about: the code of the lockout, the kind of supply, the outcome of a pre-check. */
+  readonly subject?: string;
+  readonly layer?: LimitLayer;
+  readonly value?: number;
+  readonly limit?: number;
+  readonly unit?: string;
+  readonly source?: string;
+};
+
+/** Who can resolve each code; `precheck_hold` depends on its cause and is said where it is found. */
+export const resolverOf: Readonly<Record<ReasonCode, Resolver>> = {
+  account_inactive: 'administrator',
+  consent_withdrawn: 'participant',
+  consent_missing: 'participant',
+  consent_outdated: 'participant',
+  guardian_consent_missing: 'guardian',
+  assent_missing: 'participant',
+  screening_incomplete: 'coordinator',
+  screening_excluded: 'clinician',
+  screening_expired: 'coordinator',
+  training_missing: 'coordinator',
+  training_expired: 'coordinator',
+  supervision_due: 'coordinator',
+  mood_check_due: 'participant',
+  prescription_unsigned: 'clinician',
+  second_signature_missing: 'clinician',
+  prescription_paused: 'clinician',
+  prescription_expired: 'clinician',
+  prescription_unacknowledged: 'participant',
+  lockout_safety: 'clinician',
+  lockout_review: 'clinician',
+  lockout_device: 'coordinator',
+  lockout_hold: 'time',
+  outside_hours: 'time',
+  gap_too_short: 'time',
+  day_count_reached: 'time',
+  minutes_24h: 'time',
+  week_count_reached: 'time',
+  charge_24h: 'time',
+  charge_7d: 'time',
+  course_complete: 'clinician',
+  session_open: 'participant',
+  diary_missing: 'participant',
+  recall_call_due: 'coordinator',
+  device_unassigned: 'coordinator',
+  device_recalled: 'coordinator',
+  battery_low: 'participant',
+  supply_used_up: 'coordinator',
+  supply_expired: 'coordinator',
+  precheck_missing: 'participant',
+  precheck_expired: 'participant',
+  precheck_other_person: 'participant',
+  precheck_hold: 'participant',
+  helper_absent: 'participant',
+  live_permit: 'time',
+  clock_bad: 'staff',
+  unknown_fact: 'staff',
+};
+
+export function reason(code: ReasonCode, more: Omit<Partial<Reason>, 'code'> = {}): Reason {
+  return { code, resolvedBy: resolverOf[code], ...more };
+}
+
+/** The reason if it holds. */
+export function when(holds: boolean, code: ReasonCode, more?: Omit<Partial<Reason>, 'code'>): Reason[] {
+  return holds ? [reason(code, more)] : [];
+}
