@@ -12,3 +12,6 @@ export const mostCaregivers = 5;
 
 /** A page that waits is acknowledged or goes on after this (safety rules §7). */
 export const escalationMinutes = 30;
+
+/** A prescription is written anew at least once a year, as a screening is. Own choice. */
+export const longestPrescriptionDays = 366;
