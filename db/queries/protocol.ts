@@ -3,14 +3,24 @@
 import { and, desc, eq, inArray, lt, or, sql, type SQL } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { protocol, site } from '@/db/schema/site';
-import { ProtocolSettings } from '@/shared/contracts/site';
+import { ProtocolSettings } from '@/shared/values/protocol-settings';
 
 export interface ProtocolInForce {
   id: string;
   siteId: string;
   version: number;
   settings: ProtocolSettings;
+  /** The consent document before the one in force; 0 = there was none. Enough until `settings.consentRequiredFrom`. */
+  previousConsentVersion: number;
 }
+
+const consentVersionOf = (row: string) => sql.raw(`(${row}.settings ->> 'consentVersion')::int`);
+
+const previousConsentVersion = sql<number>`coalesce((
+  select ${consentVersionOf('earlier')} from protocol earlier
+  where earlier.site_id = "protocol"."site_id" and earlier.version < "protocol"."version"
+    and ${consentVersionOf('earlier')} < ${consentVersionOf('"protocol"')}
+  order by earlier.version desc limit 1), 0)`;
 
 /** The protocol in force; null while the site has signed none, and then nothing that depends on it may go on. */
 export async function readProtocolInForce(db: Db, siteId: string): Promise<ProtocolInForce | null> {
@@ -26,6 +36,7 @@ export async function listProtocolsInForce(db: Db, siteIds: readonly string[]): 
       siteId: protocol.siteId,
       version: protocol.version,
       settings: protocol.settings,
+      previousConsentVersion,
     })
     .from(protocol)
     .where(inArray(protocol.siteId, [...siteIds]))

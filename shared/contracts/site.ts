@@ -1,8 +1,8 @@
 // Sites, their staff and their protocols (site limits, versions, contacts). Administrators write, staff read.
 
 import { z } from 'zod';
-import { siteLimitsSchema } from '@/shared/rules/site-limits';
 import { Email, Instant, Line, PasswordAgain, PersonName, Phone, Uuid, Zone, pageOf, pageQuery } from '@/shared/values/primitives';
+import { ProtocolSettings } from '@/shared/values/protocol-settings';
 import { staffRoles } from '@/shared/values/roles';
 import { SiteContact } from './account';
 import { contract } from './contract';
@@ -94,21 +94,6 @@ export const suspendStaff = contract({
   touches: ['site'],
   about: 'Suspends a member of staff, or lets them back; a suspension ends their sessions at once.',
 });
-
-export const ProtocolSettings = z.strictObject({
-  limits: siteLimitsSchema,
-  consentVersion: z.number().int().min(1).max(1000),
-  consentRequiredFrom: Instant,
-  screeningValidDays: z.number().int().min(1).max(365),
-  trainingValidDays: z.number().int().min(1).max(365),
-  watchedSessionsRequired: z.number().int().min(0).max(20),
-  excludesPregnancy: z.boolean(),
-  moodCheckEveryDays: z.number().int().min(1).max(60).nullable(),
-  retentionYears: z.number().int().min(1).max(50),
-  /** Who is paged, in this order, until somebody acknowledges. */
-  contacts: z.array(z.strictObject({ name: PersonName, email: Email, phone: Phone })).min(1).max(10),
-});
-export type ProtocolSettings = z.infer<typeof ProtocolSettings>;
 
 export const ProtocolView = z.strictObject({
   id: Uuid,

@@ -2,6 +2,7 @@
 // is ever clamped. The arithmetic stands in dose/arithmetic.ts, each row in dose/rows.ts.
 
 import { tiers, type Tier, type Waveform } from '@/shared/values/codes';
+import type { SiteLimits } from '@/shared/values/protocol-settings';
 import { halfCycleCharge, rmsOf } from './dose/arithmetic';
 import type { ComputedDose, DoseFacts, DoseJudgement, DoseRow, ElectrodeFacts } from './dose/facts';
 import { readDose, type ReadDose } from './dose/read';
@@ -22,7 +23,7 @@ import {
   siteLimitRows,
   unknownRows,
 } from './dose/rows';
-import { withDefaults, type SiteLimits } from './site-limits';
+import { withDefaults } from './site-limits';
 
 export type { ComputedDose, DoseFacts, DoseJudgement, DoseRow, ElectrodeFacts, TrapezoidFacts } from './dose/facts';
 export { chargeOf, densityOf, halfCycleCharge, minutesOn, peakOf, rmsOf } from './dose/arithmetic';

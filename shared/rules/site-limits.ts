@@ -1,40 +1,10 @@
 // What a site's protocol may set, with the rows that ship until it does, and the check that none exceeds its
 // ceiling. `routine` = one signature is enough; `most` = with two signatures; above it a dose is refused.
 
-import { z } from 'zod';
-import { atLeast, atMost } from '@/shared/values/units';
 import type { Tier } from '@/shared/values/codes';
+import type { SiteLimits } from '@/shared/values/protocol-settings';
+import { atLeast, atMost } from '@/shared/values/units';
 import { ceilings } from './ceilings';
-
-const amount = z.number().finite().min(0);
-
-/** Numbers only; whether they are allowed is `siteLimitsAllowed`, so that a refusal can name the ceiling. */
-export const siteLimitsSchema = z.strictObject({
-  routineCurrentMilliamp: amount,
-  mostCurrentMilliamp: amount,
-  routineMinutes: amount,
-  mostMinutes: amount,
-  routineChargeCoulomb: amount,
-  mostChargeCoulomb: amount,
-  routineDensityMilliampPerSquareCentimetre: amount,
-  mostDensityMilliampPerSquareCentimetre: amount,
-  /** A smaller pad needs a second signature. */
-  routineAreaSquareCentimetre: amount,
-  routineSessionsPerDay: z.number().int().min(1).max(10),
-  mostMinutesPerDay: amount,
-  /** A shorter gap needs a second signature; below `leastGapHours` it is refused. */
-  routineGapHours: amount,
-  leastGapHours: amount,
-  routineCharge24hCoulomb: amount,
-  mostCharge24hCoulomb: amount,
-  routineCharge7dCoulomb: amount,
-  mostCharge7dCoulomb: amount,
-  /** Most current under 18 years; null = this site treats no minors. */
-  minorCurrentMilliamp: amount.nullable(),
-  /** The one row for small gel electrodes is switched on. */
-  allowsRings: z.boolean(),
-});
-export type SiteLimits = z.infer<typeof siteLimitsSchema>;
 
 /** Shipped rows: guidance on home stimulation §6. All numbers own choices under the ceilings unless noted. */
 export const defaultSiteLimits: SiteLimits = {

@@ -2,8 +2,9 @@
 
 import { atLeast, atMost, isAbove, isBelow } from '@/shared/values/units';
 import type { LimitLayer, Tier } from '@/shared/values/codes';
+import type { SiteLimits } from '@/shared/values/protocol-settings';
 import { ceilings } from '../ceilings';
-import { siteLimitsAllowed, type SiteLimits } from '../site-limits';
+import { siteLimitsAllowed } from '../site-limits';
 import type { DoseRow } from './facts';
 import type { ReadDose, ReadElectrode } from './read';
 import { routineLayer, rowUpTo, siteSource } from './tiers';

@@ -3,8 +3,9 @@
 
 import type { DoseQuantity, LimitLayer, Tier } from '@/shared/values/codes';
 import { atMost, isBelow } from '@/shared/values/units';
+import type { SiteLimits } from '@/shared/values/protocol-settings';
 import type { Ceiling } from '../ceilings';
-import { defaultSiteLimits, type SiteLimits } from '../site-limits';
+import { defaultSiteLimits } from '../site-limits';
 import type { DoseRow } from './facts';
 
 /** Citation of a limit that a site's own signed protocol sets. */
