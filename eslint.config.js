@@ -36,9 +36,10 @@ const colours = [
     message: 'Colours live in components/ui/theme.ts, named by what they are for.',
   },
 ];
+const spacedProperty =
+  'Property[key.name=/^(padding|margin|gap|rowGap|columnGap|borderRadius|fontSize|lineHeight)([A-Z]|$)/]';
 const spacing = {
-  selector:
-    'Property[key.name=/^(padding|margin|gap|rowGap|columnGap|borderRadius|fontSize|lineHeight)([A-Z]|$)/] > :matches(Literal[raw=/^[1-9]/], UnaryExpression > Literal[raw=/^[1-9]/])',
+  selector: `${spacedProperty} > Literal[raw=/^[1-9]/], ${spacedProperty} > UnaryExpression > Literal[raw=/^[1-9]/]`,
   message: 'Spacing, radius and type sizes live in components/ui/theme.ts: use space, radius or type from there.',
 };
 const sides = {

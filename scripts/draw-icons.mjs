@@ -18,6 +18,9 @@ const drawings = [
 for (const { from, to, side } of drawings) {
   const svg = await readFile(asset(from));
   // The density makes the drawing at its final size; scaling a small picture up would blur its edges.
-  await sharp(svg, { density: (72 * side) / 64 }).resize(side, side).png().toFile(icon(to));
+  await sharp(svg, { density: (72 * side) / 64 })
+    .resize(side, side)
+    .png()
+    .toFile(icon(to));
 }
 await copyFile(asset('icon.svg'), icon('icon.svg'));
