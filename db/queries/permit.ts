@@ -8,7 +8,7 @@ import { device } from '@/db/schema/device';
 import { signingKey } from '@/db/schema/house';
 import { participant } from '@/db/schema/participant';
 import { permit, session } from '@/db/schema/session';
-import type { VoidCause } from '@/shared/rules/permit-state';
+import type { VoidCause } from '@/shared/values/void-causes';
 import { doseOf, type DoseRecord } from './dose';
 
 export interface PermitRecord {

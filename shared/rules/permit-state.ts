@@ -2,10 +2,6 @@
 
 import { parseInstant } from '@/shared/values/zone';
 
-/** Why a live permit can be made void. Stored as `void_<why>`. */
-export const voidCauses = ['amended', 'paused', 'lockout', 'withdrawn', 'device'] as const;
-export type VoidCause = (typeof voidCauses)[number];
-
 export type PermitWord = 'live' | 'used' | 'expired' | 'void';
 
 /** `voidedBy` is null unless it is void. A permit that ends at T is over at T, whether or not anybody has closed it yet. */
