@@ -2,7 +2,7 @@
 // by name, nothing is mended. And the windows that a signed schedule plans. What dose is allowed is shared/rules/dose.ts.
 
 import { isPosition } from '@/shared/values/positions';
-import { hourMilliseconds, isAbove, minuteMilliseconds } from '@/shared/values/units';
+import { isAbove, minuteMilliseconds } from '@/shared/values/units';
 import { addDays, endOfDay, isDate, isoOf, localDate, parseInstant } from '@/shared/values/zone';
 import { longestPrescriptionDays } from './house-limits';
 import { areHours, hoursOn } from './hours';
@@ -212,13 +212,9 @@ export function moveTo(
   const hours = hoursOn(day, { hoursFrom: schedule.hoursFrom, hoursTo: schedule.hoursTo, zone: context.zone });
   const isInside = day >= schedule.startsOn && day <= schedule.expiresOn;
   if (at === undefined || hours === undefined || !isInside) return { allowed: false, code: 'outside_prescription' };
-  const left = hours.closesAt - Math.max(hours.opensAt, at);
+  const closesAt = Math.min(hours.closesAt, endOfDay(schedule.expiresOn, context.zone));
+  const left = closesAt - Math.max(hours.opensAt, at);
   if (left < context.sessionMinutes * minuteMilliseconds) return { allowed: false, code: 'outside_prescription' };
   if (context.takenDays.includes(day)) return { allowed: false, code: 'day_taken' };
-  return { allowed: true, windowFrom: isoOf(hours.opensAt), windowTo: isoOf(hours.closesAt) };
-}
-
-/** A gap in whole milliseconds, as it is kept. */
-export function gapMillisecondsOf(hours: number): number {
-  return Math.ceil(hours * hourMilliseconds);
+  return { allowed: true, windowFrom: isoOf(hours.opensAt), windowTo: isoOf(closesAt) };
 }
