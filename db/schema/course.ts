@@ -120,7 +120,8 @@ export const signature = pgTable(
   },
   (table) => [
     index('signature_subject').on(table.subjectId, table.createdAt),
-    uniqueIndex('signature_once_a_person').on(table.subjectId, table.accountId),
+    // One person in two roles is one signature; a review that grades carries two meanings of the same person.
+    uniqueIndex('signature_once_a_person').on(table.subjectId, table.accountId).where(sql`${table.subjectKind} = 'prescription'`),
     uniqueIndex('signature_once_a_meaning').on(table.subjectId, table.meaning),
   ],
 );
