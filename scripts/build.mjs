@@ -10,7 +10,7 @@ import { root, serverBundle, webFolder, workFolder } from './ground/paths.mjs';
 import { main, run } from './ground/processes.mjs';
 import { finishPages } from './ground/pages.mjs';
 
-const settings = ['package-lock.json', 'tsconfig.json', 'scripts/build.mjs'];
+const settings = ['package.json', 'package-lock.json', 'tsconfig.json', 'scripts/build.mjs'];
 const serverInputs = [...settings, 'server', 'db', 'shared', 'locales'];
 const webInputs = [
   ...settings,
@@ -24,7 +24,7 @@ const webInputs = [
     'scripts/ground/pages.mjs',
     'scripts/ground/service-worker.js',
   ],
-  ...['app.json', 'metro.config.js', 'babel.config.js', 'package.json'],
+  ...['app.json', 'metro.config.js', 'babel.config.js'],
 ];
 
 /** One build of a kind at a time, and none when nothing changed since the last. */

@@ -233,7 +233,7 @@ for (const name of unused) faults.push(`locales/en/${name.replace(':', '.json  '
 
 if (faults.length > 0) {
   console.error(
-    `${faults.sort().join('\n')}\n\n${faults.length} ${faults.length === 1 ? 'fault' : 'faults'} in the words.`,
+    `${[...new Set(faults)].sort().join('\n')}\n\n${faults.length} ${faults.length === 1 ? 'fault' : 'faults'} in the words.`,
   );
   process.exit(1);
 }

@@ -11,6 +11,8 @@ import { asSuperuser, createDatabase, databaseUrl as urlOf, dropDatabase } from 
 
 const root = path.resolve(__dirname, '..', '..');
 const demoDatabase = 'rampwell_demo';
+/** One for all servers of the tests: a copied demo is sealed under it. */
+const secret = 'only-for-tests-0123456789-0123456789';
 
 export interface ServerOptions {
   demo?: boolean;
@@ -64,6 +66,7 @@ async function launch(databaseUrl: string, env: Record<string, string>): Promise
       PORT: String(port),
       DATABASE_URL: databaseUrl,
       RAMPWELL_DATA: folder,
+      SECRET: secret,
       ...env,
     },
   });
@@ -100,7 +103,7 @@ async function fillDemo(): Promise<void> {
     const there = await client.query('select 1 from pg_database where datname = $1', [demoDatabase]);
     if (there.rowCount) return;
     const name = await createDatabase();
-    const server = await launch(urlOf(name), { DEMO: '1' });
+    const server = await launch(urlOf(name), { DEMO: '1', DEMO_SEED: '1' });
     await server.stop();
     await client.query(`alter database ${name} rename to ${demoDatabase}`);
   });
@@ -108,7 +111,7 @@ async function fillDemo(): Promise<void> {
 
 export async function startServer(options: ServerOptions = {}): Promise<RunningServer> {
   const { seed = 'none', demo = seed === 'demo', env = {} } = options;
-  const settings = { DEMO: demo ? '1' : '0', ...env };
+  const settings = { DEMO: demo ? '1' : '0', DEMO_SEED: seed === 'demo' ? '1' : '0', ...env };
   if (options.databaseUrl) return launch(options.databaseUrl, settings);
 
   if (seed === 'demo') await fillDemo();
