@@ -29,7 +29,10 @@ function mondayOf(instant: string, zone: string): string {
 function labelOf(mark: CourseMark, format: Format, t: Translate): string {
   const parts = [
     t('mark.session', { number: mark.number, day: format.day(mark.startedAt ?? mark.windowFrom) }),
-    t(`mark.state.${mark.state}`, { minutes: format.number(mark.deliveredMinutes ?? 0, 0), planned: format.number(mark.plannedMinutes, 0) }),
+    t(`mark.state.${mark.state}`, {
+      minutes: format.number(mark.deliveredMinutes ?? 0, 0),
+      planned: format.number(mark.plannedMinutes, 0),
+    }),
   ];
   if (mark.headache !== null && mark.headache > 0) parts.push(t('mark.headache', { strength: mark.headache }));
   return parts.join(', ');
@@ -50,7 +53,9 @@ export function Strip({ marks, size, zone, onPressMark }: StripProps) {
       };
     });
   }, [marks, zone, i18n.language, t]);
-  const behind = marks.filter((mark) => mark.state === 'delivered' || mark.state === 'partial' || mark.state === 'missed').length;
+  const behind = marks.filter(
+    (mark) => mark.state === 'delivered' || mark.state === 'partial' || mark.state === 'missed',
+  ).length;
   const delivered = marks.filter((mark) => mark.state === 'delivered').length;
   return (
     <CourseStrip
