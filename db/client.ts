@@ -7,9 +7,14 @@ import pg from 'pg';
 /** A pool's handle or a transaction's: queries take either. */
 export type Db = PgDatabase<NodePgQueryResultHKT, Record<string, never>>;
 
+/** Runs plain SQL on the connection of a transaction, for the queue that wants to join it. */
+export type Execute = (text: string, values: unknown[]) => Promise<{ rows: unknown[] }>;
+
 export interface Client {
   db: NodePgDatabase;
   pool: pg.Pool;
+  /** One connection, one transaction: committed when `work` ends, undone when it throws. */
+  transaction<T>(work: (db: Db, execute: Execute) => Promise<T>): Promise<T>;
   close(): Promise<void>;
 }
 
@@ -26,7 +31,37 @@ export function connect(url: string, maxConnections: number, onError: (error: Er
     connectionTimeoutMillis: 3000,
     statement_timeout: 15_000,
     application_name: 'rampwell',
+    options: '-c timezone=UTC',
   });
   pool.on('error', onError);
-  return { db: drizzle(pool), pool, close: () => pool.end() };
+  return {
+    db: drizzle(pool),
+    pool,
+    async transaction(work) {
+      const connection = await pool.connect();
+      let broken: Error | undefined;
+      // An error while the connection is out of the pool is the connection's own event; unheard, it would end the process.
+      const note = (error: Error) => {
+        broken = error;
+      };
+      connection.on('error', note);
+      try {
+        return await drizzle(connection).transaction((db) =>
+          work(db, (text, values) => connection.query(text, values)),
+        );
+      } finally {
+        connection.off('error', note);
+        connection.release(broken);
+      }
+    },
+    close: () => pool.end(),
+  };
+}
+
+/** PostgreSQL's code of an error (`40001`), also where the query builder wrapped it; undefined for anything else. */
+export function sqlStateOf(error: unknown): string | undefined {
+  for (let cause = error, depth = 0; cause instanceof Error && depth < 5; cause = cause.cause, depth += 1) {
+    if ('code' in cause && typeof cause.code === 'string') return cause.code;
+  }
+  return undefined;
 }

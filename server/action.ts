@@ -28,7 +28,9 @@ export interface SystemActor {
 export type Actor = AccountActor | AnyoneActor | SystemActor;
 
 /** Who an action may meet: somebody signed in, unless the contract serves anyone. */
-export type ActorOf<C extends ContractShape> = 'anyone' extends C['who'][number] ? AccountActor | AnyoneActor : AccountActor;
+export type ActorOf<C extends ContractShape> = 'anyone' extends C['who'][number]
+  ? AccountActor | AnyoneActor
+  : AccountActor;
 
 type Json = string | number | boolean | null | readonly Json[] | { readonly [key: string]: Json | undefined };
 
@@ -36,8 +38,8 @@ type Json = string | number | boolean | null | readonly Json[] | { readonly [key
 export interface RecordEntry {
   participantId?: string;
   siteId?: string;
-  /** write unless said; reads of a person's record say read. */
-  kind?: 'write' | 'read';
+  /** write unless said; reads of a person's record say read; refusals are recorded by the house. */
+  kind?: 'write' | 'read' | 'refusal';
   subject?: { kind: string; id: string };
   before?: Json;
   after?: Json;
@@ -79,6 +81,8 @@ export interface Tx {
   readonly vault: Vault;
   /** Rules' reasons with the sentence and the contact that a refusal's reasons get, for answers that carry reasons. */
   explain(reasons: readonly BareReason[], participantId: string): Promise<Reason[]>;
+  /** For the demo's own door alone: moves the house's clock and runs what comes due, outside this transaction. */
+  readonly moveClock?: ((seconds: number) => Promise<{ now: string; jobsRun: number }>) | undefined;
 }
 
 export interface Vault {
@@ -121,7 +125,10 @@ export function notFound(): Refusal {
 }
 
 /** Refused by a rule: 409 with a stable code, and whatever the rule found. Nothing may have been written before. */
-export function refuse(code: string, found: Omit<Refusal, 'refused' | 'status' | 'code'> & { status?: 403 | 409 | 413 | 415 } = {}): Refusal {
+export function refuse(
+  code: string,
+  found: Omit<Refusal, 'refused' | 'status' | 'code'> & { status?: 403 | 409 | 413 | 415 } = {},
+): Refusal {
   const { status = 409, ...rest } = found;
   return { refused: true, status, code, ...rest };
 }
@@ -159,7 +166,10 @@ export interface Action<C extends ContractShape = ContractShape> {
 }
 
 /** Ties an action to its contract. */
-export function action<const C extends ContractShape>(contract: C, run: (input: ActionInput<C>, tx: Tx) => Promise<AnswerOf<C> | Refusal>): Action<C> {
+export function action<const C extends ContractShape>(
+  contract: C,
+  run: (input: ActionInput<C>, tx: Tx) => Promise<AnswerOf<C> | Refusal>,
+): Action<C> {
   return { contract, run };
 }
 

@@ -263,6 +263,7 @@ CREATE TABLE "audit_entry" (
 CREATE TABLE "audit_head" (
 	"chain" text PRIMARY KEY NOT NULL,
 	"sequence" bigint NOT NULL,
+	"previous_hash" text NOT NULL,
 	"hash" text NOT NULL
 );
 --> statement-breakpoint
@@ -283,6 +284,11 @@ CREATE TABLE "demo_mail" (
 CREATE TABLE "demo_progress" (
 	"step" text PRIMARY KEY NOT NULL,
 	"facts" jsonb NOT NULL
+);
+--> statement-breakpoint
+CREATE TABLE "heartbeat" (
+	"name" text PRIMARY KEY NOT NULL,
+	"at" timestamp (3) with time zone NOT NULL
 );
 --> statement-breakpoint
 CREATE TABLE "key_seen" (
@@ -691,7 +697,7 @@ CREATE UNIQUE INDEX "prescription_version" ON "prescription" USING btree ("cours
 CREATE UNIQUE INDEX "prescription_one_in_force" ON "prescription" USING btree ("course_id") WHERE "prescription"."signed_at" is not null and "prescription"."closed_at" is null;--> statement-breakpoint
 CREATE INDEX "prescription_participant" ON "prescription" USING btree ("participant_id","created_at" DESC NULLS LAST);--> statement-breakpoint
 CREATE INDEX "signature_subject" ON "signature" USING btree ("subject_id","created_at");--> statement-breakpoint
-CREATE UNIQUE INDEX "signature_once_a_person" ON "signature" USING btree ("subject_id","account_id");--> statement-breakpoint
+CREATE UNIQUE INDEX "signature_once_a_person" ON "signature" USING btree ("subject_id","account_id") WHERE "signature"."subject_kind" = 'prescription';--> statement-breakpoint
 CREATE UNIQUE INDEX "signature_once_a_meaning" ON "signature" USING btree ("subject_id","meaning");--> statement-breakpoint
 CREATE INDEX "device_site_label" ON "device" USING btree ("site_id","label","id");--> statement-breakpoint
 CREATE UNIQUE INDEX "device_assignment_one_person" ON "device_assignment" USING btree ("device_id") WHERE "device_assignment"."closed_at" is null;--> statement-breakpoint

@@ -66,7 +66,7 @@ SELECT make_append_only('worklist_item', '~escalate_at', '~escalation', 'closed_
 --> statement-breakpoint
 SELECT make_append_only('device', '+last_counter');
 --> statement-breakpoint
-SELECT make_append_only('audit_head', '+sequence', '~hash');
+SELECT make_append_only('audit_head', '+sequence', '~hash', '~previous_hash');
 --> statement-breakpoint
 DROP FUNCTION make_append_only(regclass, text[]);
 --> statement-breakpoint

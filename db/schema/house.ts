@@ -1,4 +1,4 @@
-// The house's own tables: audit chains, outbox, keys seen, signing keys, the demo clock.
+// The house's own tables: audit chains, outbox, keys seen, signing keys, the demo clock, heartbeats.
 
 import { sql } from 'drizzle-orm';
 import { bigint, boolean, index, integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core';
@@ -8,6 +8,8 @@ import { closing, id, instant } from './columns';
 export const auditHead = pgTable('audit_head', {
   chain: text('chain').primaryKey(),
   sequence: bigint('sequence', { mode: 'number' }).notNull(),
+  /** The hash before `hash`: lets one statement move the head and write the entry. */
+  previousHash: text('previous_hash').notNull(),
   hash: text('hash').notNull(),
 });
 
@@ -63,7 +65,11 @@ export const outbox = pgTable(
     /** sent, dropped. */
     ...closing(),
   },
-  (table) => [index('outbox_due').on(table.urgent.desc(), table.dueAt).where(sql`${table.closedAt} is null`)],
+  (table) => [
+    index('outbox_due')
+      .on(table.urgent.desc(), table.dueAt)
+      .where(sql`${table.closedAt} is null`),
+  ],
 );
 
 /** Idempotency: the answer that a key got. */
@@ -109,6 +115,12 @@ export const demoMail = pgTable(
   },
   (table) => [index('demo_mail_sent').on(table.sentAt.desc())],
 );
+
+/** When each process that runs jobs last did, in real time: how health knows that jobs run. */
+export const heartbeat = pgTable('heartbeat', {
+  name: text('name').primaryKey(),
+  at: instant('at').notNull(),
+});
 
 /** What the demo seed has done, so that a second start adds nothing. */
 export const demoProgress = pgTable('demo_progress', {

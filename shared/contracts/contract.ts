@@ -31,8 +31,12 @@ export interface ContractShape {
   answer: z.ZodType;
   /** Status of a good answer; 200 unless said. */
   status?: 200 | 201;
+  /** Answers 503 while its `status` is not `ok`: health alone. */
+  health?: true;
   /** Honours the header `Idempotency-Key` (the same key and body give the same answer); `required`: refuses without it. */
   once?: true | 'required';
+  /** A repeated key is not answered from what was kept: the action answers it afresh (a permit with its present state). */
+  replay?: 'action';
   /** The body's `password` is checked against the asker's before anything runs: this is a signature. */
   confirm?: true;
   /** Exists only with DEMO=1. */
@@ -56,8 +60,16 @@ export function contract<const C extends ContractShape>(shape: C): C {
   return shape;
 }
 
-type OutputOf<C, K extends PropertyKey> = C extends { [P in K]: infer S } ? (S extends z.ZodType ? z.output<S> : undefined) : undefined;
-type InputOf<C, K extends PropertyKey> = C extends { [P in K]: infer S } ? (S extends z.ZodType ? z.input<S> : undefined) : undefined;
+type OutputOf<C, K extends PropertyKey> = C extends { [P in K]: infer S }
+  ? S extends z.ZodType
+    ? z.output<S>
+    : undefined
+  : undefined;
+type InputOf<C, K extends PropertyKey> = C extends { [P in K]: infer S }
+  ? S extends z.ZodType
+    ? z.input<S>
+    : undefined
+  : undefined;
 
 /** What the action receives, after parsing. */
 export type ParamsOf<C> = OutputOf<C, 'params'>;

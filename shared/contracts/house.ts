@@ -13,6 +13,7 @@ export const readHealth = contract({
   path: '/api/health',
   who: everyone,
   reach: 'open',
+  health: true,
   answer: z.strictObject({
     status: z.enum(['ok', 'starting', 'failing']),
     database: z.boolean(),
@@ -29,7 +30,16 @@ export const listDemoAccounts = contract({
   who: everyone,
   reach: 'open',
   demo: true,
-  answer: z.array(z.strictObject({ email: z.string(), password: z.string(), role: z.enum(roles), site: z.string(), state: z.string().nullable(), name: z.string() })),
+  answer: z.array(
+    z.strictObject({
+      email: z.string(),
+      password: z.string(),
+      role: z.enum(roles),
+      site: z.string(),
+      state: z.string().nullable(),
+      name: z.string(),
+    }),
+  ),
   about: 'The demo’s accounts; for participants, `state` says where they are.',
 });
 
@@ -40,8 +50,20 @@ export const listDemoMail = contract({
   who: everyone,
   reach: 'open',
   demo: true,
-  query: z.strictObject({ to: z.string().max(254).optional(), limit: z.coerce.number().int().min(1).max(1000).default(200) }),
-  answer: z.array(z.strictObject({ id: z.string(), to: z.string(), subject: z.string(), text: z.string(), html: z.string(), sentAt: Instant })),
+  query: z.strictObject({
+    to: z.string().max(254).optional(),
+    limit: z.coerce.number().int().min(1).max(1000).default(200),
+  }),
+  answer: z.array(
+    z.strictObject({
+      id: z.string(),
+      to: z.string(),
+      subject: z.string(),
+      text: z.string(),
+      html: z.string(),
+      sentAt: Instant,
+    }),
+  ),
   about: 'Mails that the local catcher took, newest first.',
 });
 
@@ -55,6 +77,18 @@ export const moveDemoClock = contract({
   /** At most 90 days a call. */
   body: z.strictObject({ advanceSeconds: z.number().int().min(0).max(7_776_000) }),
   answer: z.strictObject({ now: Instant, jobsRun: z.number().int() }),
-  touches: ['account', 'clearance', 'course', 'worklist', 'participant', 'session', 'diary', 'permit', 'message', 'caregiver'],
-  about: 'Moves the clock of rules, jobs and permits forward, and answers once the jobs that came due have run. Not idempotent.',
+  touches: [
+    'account',
+    'clearance',
+    'course',
+    'worklist',
+    'participant',
+    'session',
+    'diary',
+    'permit',
+    'message',
+    'caregiver',
+  ],
+  about:
+    'Moves the clock of rules, jobs and permits forward, and answers once the jobs that came due have run. Not idempotent.',
 });

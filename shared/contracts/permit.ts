@@ -56,6 +56,7 @@ export const issuePermit = contract({
   who: ['participant'],
   reach: 'own',
   once: 'required',
+  replay: 'action',
   body: z.strictObject({
     courseId: Uuid,
     precheckId: Uuid,
@@ -67,7 +68,8 @@ export const issuePermit = contract({
   status: 201,
   refusals: ['clearance.refused', 'permit.too_many'],
   touches: ['clearance', 'permit', 'session'],
-  about: 'Asks for one permit. Refused (409) with every reason at once. The same key gives the same permit with its present state.',
+  about:
+    'Asks for one permit. Refused (409) with every reason at once. The same key gives the same permit with its present state.',
   example: {
     body: {
       courseId: '8f5f2c3e-6f0b-4a62-8b6a-0e5d3c1b2a90',
@@ -96,7 +98,16 @@ export const readPermitKeys = contract({
   who: ['anyone', 'participant', 'caregiver', 'coordinator', 'clinician', 'monitor', 'administrator'],
   reach: 'open',
   answer: z.strictObject({
-    keys: z.array(z.strictObject({ kty: z.literal('OKP'), crv: z.literal('Ed25519'), x: z.string(), kid: z.string(), alg: z.literal('EdDSA'), use: z.literal('sig') })),
+    keys: z.array(
+      z.strictObject({
+        kty: z.literal('OKP'),
+        crv: z.literal('Ed25519'),
+        x: z.string(),
+        kid: z.string(),
+        alg: z.literal('EdDSA'),
+        use: z.literal('sig'),
+      }),
+    ),
   }),
   about: 'Public keys (JWK set, RFC 7517) that a stimulator is given when it is set up.',
 });
@@ -107,7 +118,16 @@ export const readOwnDevice = contract({
   path: '/api/own-device',
   who: ['participant'],
   reach: 'own',
-  answer: z.strictObject({ id: Uuid, label: z.string(), model: z.string(), serial: z.string(), lastCounter: z.number().int(), recalled: z.boolean() }).nullable(),
+  answer: z
+    .strictObject({
+      id: Uuid,
+      label: z.string(),
+      model: z.string(),
+      serial: z.string(),
+      lastCounter: z.number().int(),
+      recalled: z.boolean(),
+    })
+    .nullable(),
   about: 'The stimulator that the participant holds, for pairing.',
 });
 
@@ -120,23 +140,59 @@ const at = {
   atSeconds: z.number().min(0).max(86_400),
 };
 
-export const endReasons = ['complete', 'stopped', 'pause_limit', 'lost_contact', 'too_short_to_resume', 'red_flag', 'pain_high', 'over_current', 'permit_void', 'device_fault'] as const;
+export const endReasons = [
+  'complete',
+  'stopped',
+  'pause_limit',
+  'lost_contact',
+  'too_short_to_resume',
+  'red_flag',
+  'pain_high',
+  'over_current',
+  'permit_void',
+  'device_fault',
+] as const;
 
 export const SessionEvent = z.discriminatedUnion('kind', [
-  z.strictObject({ ...at, kind: z.literal('identified'), deviceId: Uuid, serial: z.string().max(100), firmware: z.string().max(100), batteryPercent: z.number().min(0).max(100) }),
-  z.strictObject({ ...at, kind: z.literal('contact'), position: z.string().max(6), kiloohm: z.number().min(0).max(10_000).nullable(), grade: z.enum(['good', 'weak', 'none']) }),
+  z.strictObject({
+    ...at,
+    kind: z.literal('identified'),
+    deviceId: Uuid,
+    serial: z.string().max(100),
+    firmware: z.string().max(100),
+    batteryPercent: z.number().min(0).max(100),
+  }),
+  z.strictObject({
+    ...at,
+    kind: z.literal('contact'),
+    position: z.string().max(6),
+    kiloohm: z.number().min(0).max(10_000).nullable(),
+    grade: z.enum(['good', 'weak', 'none']),
+  }),
   z.strictObject({ ...at, kind: z.literal('started'), counter: z.number().int() }),
   z.strictObject({
     ...at,
     kind: z.literal('samples'),
     /** `[seconds, mA]` (envelope for AC), at 1 Hz or faster. */
-    samples: z.array(z.tuple([z.number().min(0).max(86_400), z.number().min(-20).max(20)])).min(1).max(600),
+    samples: z
+      .array(z.tuple([z.number().min(0).max(86_400), z.number().min(-20).max(20)]))
+      .min(1)
+      .max(600),
     /** `[position, kΩ]`, latest of the batch. */
     impedance: z.array(z.tuple([z.string().max(6), z.number().min(0).max(10_000)])).max(12),
   }),
   z.strictObject({ ...at, kind: z.enum(['contact_lost', 'contact_back', 'pause', 'resume']) }),
-  z.strictObject({ ...at, kind: z.literal('stop'), why: z.enum(['button', 'red_flag', 'pain_high', 'permit_void', 'clock_implausible']) }),
-  z.strictObject({ ...at, kind: z.literal('sensation'), sensation: z.string().max(40), strength: z.number().int().min(0).max(10) }),
+  z.strictObject({
+    ...at,
+    kind: z.literal('stop'),
+    why: z.enum(['button', 'red_flag', 'pain_high', 'permit_void', 'clock_implausible']),
+  }),
+  z.strictObject({
+    ...at,
+    kind: z.literal('sensation'),
+    sensation: z.string().max(40),
+    strength: z.number().int().min(0).max(10),
+  }),
   z.strictObject({ ...at, kind: z.literal('red_flag'), flag: z.string().max(40) }),
   z.strictObject({
     ...at,
@@ -163,13 +219,23 @@ export const sendEvents = contract({
     /** Ids stored now, ids that were there already, ids refused with why. */
     stored: z.array(Uuid),
     known: z.array(Uuid),
-    refused: z.array(z.strictObject({ id: Uuid, code: z.enum(['other_content', 'from_the_future', 'sequence_taken', 'after_the_end', 'too_late']), message: z.string() })),
+    refused: z.array(
+      z.strictObject({
+        id: Uuid,
+        code: z.enum(['other_content', 'from_the_future', 'sequence_taken', 'after_the_end', 'too_late']),
+        message: z.string(),
+      }),
+    ),
     sessionId: Uuid,
     sessionState: z.enum(['permitted', 'running', 'awaiting_record', 'closed', 'void']),
     /** Sequence numbers not yet here, up to the highest one that is. */
     missing: z.array(z.number().int()),
     /** void: the permit was revoked; the device ramps down when `rampDown`. */
-    permit: z.strictObject({ state: z.enum(['live', 'used', 'expired', 'void']), voidedBy: z.string().nullable(), rampDown: z.boolean() }),
+    permit: z.strictObject({
+      state: z.enum(['live', 'used', 'expired', 'void']),
+      voidedBy: z.string().nullable(),
+      rampDown: z.boolean(),
+    }),
   }),
   refusals: ['events.none_accepted'],
   touches: ['session', 'clearance', 'course'],
@@ -177,8 +243,28 @@ export const sendEvents = contract({
   example: {
     body: {
       events: [
-        { id: '1f0d9c55-8f5e-4f3a-9b52-0c3f7b8a9d01', sequence: 3, atSeconds: 30, kind: 'samples', samples: [[29, 1.93], [30, 2.0]], impedance: [['F3', 6.2], ['Fp2', 7.1]] },
-        { id: '1f0d9c55-8f5e-4f3a-9b52-0c3f7b8a9d02', sequence: 4, atSeconds: 42.5, kind: 'sensation', sensation: 'tingling', strength: 3 },
+        {
+          id: '1f0d9c55-8f5e-4f3a-9b52-0c3f7b8a9d01',
+          sequence: 3,
+          atSeconds: 30,
+          kind: 'samples',
+          samples: [
+            [29, 1.93],
+            [30, 2.0],
+          ],
+          impedance: [
+            ['F3', 6.2],
+            ['Fp2', 7.1],
+          ],
+        },
+        {
+          id: '1f0d9c55-8f5e-4f3a-9b52-0c3f7b8a9d02',
+          sequence: 4,
+          atSeconds: 42.5,
+          kind: 'sensation',
+          sensation: 'tingling',
+          strength: 3,
+        },
       ],
     },
   },
