@@ -38,3 +38,18 @@ export const resetPassword = (token: string, newPassword: string) => post('reset
 export const changePassword = (currentPassword: string, newPassword: string) => post('change-password', { currentPassword, newPassword, revokeOtherSessions: true });
 /** Ends every session of this account, this one too. */
 export const signOutEverywhere = () => post('revoke-sessions', {});
+
+const TwoFactorKeys = z.object({ totpURI: z.string(), backupCodes: z.array(z.string()) });
+
+/** Begins the second factor: the key for the authenticator and the emergency codes, or null when refused. It is on after the first code. */
+export async function enableSecondFactor(password: string): Promise<{ uri: string; secret: string; backupCodes: readonly string[] } | null> {
+  const response = await fetch('/api/auth/two-factor/enable', {
+    method: 'POST',
+    credentials: 'same-origin',
+    headers: { 'content-type': 'application/json', accept: 'application/json' },
+    body: JSON.stringify({ password }),
+  }).catch(() => null);
+  const keys = TwoFactorKeys.safeParse(response?.ok ? await response.json() : null);
+  if (!keys.success) return null;
+  return { uri: keys.data.totpURI, secret: new URL(keys.data.totpURI).searchParams.get('secret') ?? '', backupCodes: keys.data.backupCodes };
+}
