@@ -185,7 +185,7 @@ export const SessionEvent = z.discriminatedUnion('kind', [
   z.strictObject({
     ...at,
     kind: z.literal('stop'),
-    why: z.enum(['button', 'red_flag', 'pain_high', 'permit_void', 'clock_implausible']),
+    why: z.enum(['button', 'red_flag', 'pain_high', 'permit_void', 'over_current', 'clock_implausible']),
   }),
   z.strictObject({
     ...at,

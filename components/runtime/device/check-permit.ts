@@ -22,7 +22,8 @@ function refusalOf(error: unknown): StartRefusal {
   if (error instanceof errors.JWTExpired) return 'permit_expired';
   if (error instanceof errors.JWSSignatureVerificationFailed) return 'permit_altered';
   if (error instanceof errors.JWKSNoMatchingKey) return 'permit_foreign';
-  if (error instanceof errors.JWTClaimValidationFailed) return error.claim === 'aud' ? 'permit_other_device' : 'permit_foreign';
+  if (error instanceof errors.JWTClaimValidationFailed)
+    return error.claim === 'aud' ? 'permit_other_device' : 'permit_foreign';
   if (error instanceof errors.JOSENotSupported || error instanceof errors.JWKSInvalid) return 'cannot_check';
   if (error instanceof errors.JOSEError) return 'permit_unreadable';
   // A browser that cannot check Ed25519 throws an error of its own: unknown is no.

@@ -75,7 +75,12 @@ export type EndedWhy =
 /** One line of the stimulator's own record. Seconds since the start of the ramp up; `index` counts 0, 1, 2 … in a session. */
 export type DeviceEntry = { readonly index: number; readonly atSeconds: number } & (
   | { readonly kind: 'started'; readonly counter: number }
-  | { readonly kind: 'contact'; readonly position: string; readonly kiloohm: number | null; readonly grade: ContactGrade }
+  | {
+      readonly kind: 'contact';
+      readonly position: string;
+      readonly kiloohm: number | null;
+      readonly grade: ContactGrade;
+    }
   | { readonly kind: 'contact_lost' | 'contact_back' | 'pause' | 'resume' }
   | { readonly kind: 'stop'; readonly why: StopWhy }
   | { readonly kind: 'ended'; readonly reason: EndedWhy; readonly onSeconds: number; readonly chargeCoulomb: number }
@@ -92,9 +97,10 @@ export interface DeviceSession {
   readonly sessionId: string;
   readonly permitId: string;
   readonly dose: TrapezoidFacts;
+  /** Since the start of the ramp up; stands still once the session has ended. */
   readonly seconds: number;
   readonly snapshot: SessionSnapshot;
-  /** Lengths of the pauses for drawing: where in on-time the current went down, and for how long. */
+  /** What moved it so far, for drawing its curve. */
   readonly events: readonly (readonly [number, DeviceWord])[];
   readonly stopWhy: StopWhy | null;
   readonly endedWhy: EndedWhy | null;

@@ -80,7 +80,11 @@ export async function benchOf(
 }
 
 /** Paired, on the head, contact settled. */
-export async function readyBench(house: Signer, accountId = freshAccount(), extra: Partial<DeviceParts> = {}): Promise<Bench> {
+export async function readyBench(
+  house: Signer,
+  accountId = freshAccount(),
+  extra: Partial<DeviceParts> = {},
+): Promise<Bench> {
   const bench = await benchOf(accountId, extra);
   await bench.device.pair({ deviceId, serial: serial ?? '', keys: [house.key], now: nowText });
   bench.device.measureContact(electrodes);

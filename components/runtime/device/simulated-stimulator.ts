@@ -1,0 +1,320 @@
+// A stimulator without hardware that behaves like one with: it checks permits itself, ramps by the one set of states that the
+// server uses too, measures, watches its own current, keeps its own record, and goes on while no page is open.
+// It must not take the app's word for anything but the time it is told and what the wearer does with the pads.
+
+import { millisecondsOf } from '@/shared/values/units';
+import type { PermitClaims } from '@/shared/contracts/permit';
+import type { Polarity } from '@/shared/values/codes';
+import { chanceAt, seedOf } from './chance';
+import { checkPermit, type PermitCheck, type PermitFinding } from './check-permit';
+import { gradeOf, kiloohmAt } from './contact-model';
+import { DeviceClock, type Clocks } from './device-clock';
+import { RecordKeeper } from './device-record';
+import { emptyState, freshSession, type DeviceStore, type KeptSession, type KeptState } from './device-state';
+import { happen, measureUpTo, stateOf, stopAt, type Surroundings, type Written } from './measure';
+import type {
+  DeviceIdentity,
+  DeviceRecord,
+  DeviceStatus,
+  ElectrodeContact,
+  Pairing,
+  StartAnswer,
+  Stimulator,
+  StopWhy,
+} from './stimulator';
+
+export interface DeviceParts extends Clocks {
+  store: DeviceStore;
+  /** Calls again and again until told to stop. */
+  every(milliseconds: number, call: () => void): () => void;
+  checkPermit?(check: PermitCheck): Promise<PermitFinding>;
+  /** mA that a broken output adds; for trying its own watch. */
+  faultMilliamp?(seconds: number): number;
+}
+
+const firmware = 'SIM 1.2';
+const tickMilliseconds = 250;
+/** Below this the output would sag before the end. Own choice; the server asks for more (30 %). */
+const batteryLeastPercent = 10;
+/** A whole session of 2 mA takes about 6 %. Own choice. */
+const batteryPercentPerMilliampSecond = 0.0024;
+/** It stands on its charger between sessions; after this it is charged. Own choice. */
+const chargeAfterMs = 3_600_000;
+
+const nothing = (): Written => ({ entries: [], samples: [] });
+
+export class SimulatedStimulator implements Stimulator {
+  private state: KeptState;
+  private clock: DeviceClock;
+  private readonly keeper: RecordKeeper;
+  private stopTicking: (() => void) | null = null;
+  private readonly listeners = new Set<() => void>();
+
+  constructor(private readonly parts: DeviceParts) {
+    this.state = emptyState(parts.wallMilliseconds());
+    this.clock = new DeviceClock(parts, this.state);
+    this.keeper = new RecordKeeper(parts.store, () => this.tell());
+  }
+
+  private running(): KeptSession | null {
+    return this.state.session !== null && this.state.session.endedWhy === null ? this.state.session : null;
+  }
+
+  private surroundings(): Surroundings {
+    return {
+      pads: this.state.pads,
+      samples: this.keeper.samples,
+      faultMilliamp: this.parts.faultMilliamp ?? (() => 0),
+    };
+  }
+
+  private tell(): void {
+    for (const listener of this.listeners) listener();
+  }
+
+  private startTicking(): void {
+    this.stopTicking ??= this.parts.every(tickMilliseconds, () => this.tick());
+  }
+
+  private tick(): void {
+    const session = this.running();
+    if (session !== null) this.advance(session);
+    this.tell();
+  }
+
+  private keep(written: Written): Promise<void> {
+    for (const [, milliamp] of written.samples) {
+      const used = Math.abs(milliamp ?? 0) * batteryPercentPerMilliampSecond;
+      this.state.batteryPercent = Math.max(0, this.state.batteryPercent - used);
+    }
+    return this.keeper.keep(this.state, written);
+  }
+
+  private advance(session: KeptSession): void {
+    const uptime = this.clock.settle();
+    const written = nothing();
+    measureUpTo(session, this.surroundings(), written, uptime - session.startedAtUptime);
+    if (session.stopWhy === 'over_current') this.state.isFaulty = true;
+    if (session.endedWhy !== null) this.state.pace = 1;
+    if (written.entries.length > 0 || written.samples.length > 0) void this.keep(written);
+  }
+
+  async open(): Promise<void> {
+    const { state, entries, samples } = await this.parts.store.read();
+    if (state === undefined) return;
+    this.state = state;
+    this.clock = new DeviceClock(this.parts, state);
+    if (state.session) this.keeper.takeUp(state.session.sessionId, entries, samples);
+    const session = this.running();
+    if (session === null) return;
+    const { rampUpSeconds, holdSeconds, rampDownSeconds } = session.dose;
+    // It went on meanwhile, if that time can be believed; else it goes down from where it was.
+    if (this.clock.bridge(rampUpSeconds + holdSeconds + rampDownSeconds)) this.tick();
+    else this.stop('clock_implausible');
+    this.startTicking();
+  }
+
+  async pair(pairing: Pairing): Promise<DeviceIdentity> {
+    const toldMs = Date.parse(pairing.now);
+    if (this.state.pairing?.deviceId !== pairing.deviceId) {
+      this.state.highestCounter = 0;
+      this.state.notBeforeMs = 0;
+      this.state.chargedAtMs = null;
+    }
+    this.state.pairing = { deviceId: pairing.deviceId, serial: pairing.serial, keys: [...pairing.keys] };
+    this.clock.tellTime(toldMs);
+    const chargedAt = this.state.chargedAtMs;
+    if (this.running() === null && (chargedAt === null || toldMs - chargedAt > chargeAfterMs)) {
+      this.state.batteryPercent = 78 + Math.round(20 * chanceAt(seedOf(pairing.serial), this.state.highestCounter));
+      this.state.chargedAtMs = toldMs;
+    }
+    await this.keep(nothing());
+    return this.identityOf(pairing.deviceId, pairing.serial);
+  }
+
+  private identityOf(deviceId: string, serial: string): DeviceIdentity {
+    return { deviceId, serial, firmware, batteryPercent: Math.floor(this.state.batteryPercent) };
+  }
+
+  measureContact(electrodes: readonly { position: string; polarity: Polarity }[]): void {
+    if (this.running() !== null) return;
+    const placedAtSeconds = this.clock.settle();
+    const set = `${this.state.pairing?.serial ?? ''}:${this.state.highestCounter}`;
+    const placed = new Map(this.state.pads.map((pad) => [pad.position, pad]));
+    this.state.electrodes = electrodes.map(({ position, polarity }) => ({ position, polarity }));
+    this.state.pads = electrodes.map(({ position }) => {
+      const seed = seedOf(`${set}:${position}`);
+      const there = placed.get(position);
+      // The same pad as a moment ago: it has gone on soaking.
+      if (there?.seed === seed && !there.isLifted) return there;
+      return { position, seed, placedAtSeconds, attendedAtSeconds: null, isLifted: false };
+    });
+    this.startTicking();
+    this.tell();
+  }
+
+  attend(position: string): void {
+    const uptime = this.clock.settle();
+    const pad = this.state.pads.find((one) => one.position === position);
+    if (!pad) return;
+    pad.attendedAtSeconds ??= uptime;
+    pad.isLifted = false;
+    this.tell();
+  }
+
+  /** What a wearer can do to a pad and no app can: it comes off. For trying what happens then. */
+  lift(position: string): void {
+    const pad = this.state.pads.find((one) => one.position === position);
+    if (pad) pad.isLifted = true;
+    this.tell();
+  }
+
+  async start(permitToken: string): Promise<StartAnswer> {
+    const { pairing, electrodes } = this.state;
+    if (pairing === null) return { started: false, why: 'not_paired' };
+    if (this.state.isFaulty) return { started: false, why: 'faulty' };
+    if (this.running() !== null) return { started: false, why: 'session_running' };
+    if (this.state.batteryPercent < batteryLeastPercent) return { started: false, why: 'battery_empty' };
+    const finding = await (this.parts.checkPermit ?? checkPermit)({
+      token: permitToken,
+      keys: pairing.keys,
+      deviceId: pairing.deviceId,
+      nowMs: this.clock.nowMs(),
+      highestCounter: this.state.highestCounter,
+    });
+    if (!finding.ok) return { started: false, why: finding.why };
+    const { claims } = finding;
+    const isPlacedSo =
+      claims.montage.length === electrodes.length &&
+      claims.montage.every(({ position, polarity }) =>
+        electrodes.some((one) => one.position === position && one.polarity === polarity),
+      );
+    if (!isPlacedSo) return { started: false, why: 'permit_other_placement' };
+    if (!this.isContactGood()) return { started: false, why: 'contact_not_good' };
+    return this.begin(claims);
+  }
+
+  /** The counter is written before any current flows: whatever happens next, this permit cannot start it twice. */
+  private async begin(claims: PermitClaims): Promise<StartAnswer> {
+    const before = { session: this.state.session, highestCounter: this.state.highestCounter };
+    this.state.highestCounter = claims.counter;
+    this.clock.believeNotBefore(millisecondsOf(claims.iat));
+    this.state.session = freshSession(claims, seedOf(claims.jti), this.clock.settle());
+    this.keeper.takeUp(claims.session, [], []);
+    await this.keep({ entries: [{ index: 0, atSeconds: 0, kind: 'started', counter: claims.counter }], samples: [] });
+    if (!this.keeper.isKept) {
+      Object.assign(this.state, before);
+      return { started: false, why: 'record_unwritable' };
+    }
+    this.startTicking();
+    this.tick();
+    return { started: true };
+  }
+
+  /** Something that happens to the running session now. */
+  private act(happening: (session: KeptSession, written: Written, seconds: number) => void): void {
+    const session = this.running();
+    if (session === null) return;
+    this.advance(session);
+    if (session.endedWhy !== null) return;
+    const written = nothing();
+    happening(session, written, this.clock.uptime() - session.startedAtUptime);
+    void this.keep(written);
+    this.tell();
+  }
+
+  pause(): void {
+    this.act((session, written, seconds) => {
+      const now = stateOf(session, seconds);
+      if (now.state === 'ended' || now.pausedBy === 'person' || session.stopWhy !== null) return;
+      happen(session, this.surroundings(), written, seconds, 'pause');
+    });
+  }
+
+  resume(): boolean {
+    if (!this.isContactGood()) return false;
+    this.act((session, written, seconds) => happen(session, this.surroundings(), written, seconds, 'resume'));
+    return true;
+  }
+
+  stop(why: StopWhy): void {
+    this.act((session, written, seconds) => stopAt(session, this.surroundings(), written, seconds, why));
+  }
+
+  private isContactGood(): boolean {
+    return this.contacts().every((contact) => contact.grade === 'good');
+  }
+
+  private contacts(): ElectrodeContact[] {
+    const uptime = this.clock.uptime();
+    return this.state.electrodes.flatMap(({ position, polarity }) => {
+      const pad = this.state.pads.find((one) => one.position === position);
+      if (!pad) return [];
+      const kiloohm = kiloohmAt(pad, uptime);
+      return [{ position, polarity, kiloohm, grade: gradeOf(kiloohm) }];
+    });
+  }
+
+  private sessionSeconds(session: KeptSession): number {
+    return session.endedAtSeconds ?? this.clock.uptime() - session.startedAtUptime;
+  }
+
+  status(): DeviceStatus {
+    const { pairing, session } = this.state;
+    const seconds = session === null ? 0 : this.sessionSeconds(session);
+    return {
+      identity: pairing === null ? null : this.identityOf(pairing.deviceId, pairing.serial),
+      contacts: this.contacts(),
+      session: session && {
+        sessionId: session.sessionId,
+        permitId: session.permitId,
+        dose: session.dose,
+        seconds,
+        snapshot: stateOf(session, seconds),
+        events: [...session.events],
+        stopWhy: session.stopWhy,
+        endedWhy: session.endedWhy,
+      },
+      recordIsKept: this.keeper.isKept,
+      isFaulty: this.state.isFaulty,
+    };
+  }
+
+  record(sessionId: string, from: { entry: number; sample: number }): DeviceRecord {
+    return this.keeper.read(sessionId, from);
+  }
+
+  subscribe(listener: () => void): () => void {
+    this.listeners.add(listener);
+    return () => this.listeners.delete(listener);
+  }
+
+  close(): void {
+    this.stopTicking?.();
+    this.stopTicking = null;
+    this.listeners.clear();
+    this.keeper.close();
+  }
+
+  /** A demo's own: time that runs faster until the session ends. */
+  setPace(pace: number): void {
+    const session = this.running();
+    if (session === null) return;
+    this.advance(session);
+    this.clock.setPace(pace);
+    void this.keep(nothing());
+    this.tell();
+  }
+
+  pace(): number {
+    return this.state.pace;
+  }
+
+  /** How far its time is ahead of real time in this session. */
+  secondsAhead(): number {
+    const { session } = this.state;
+    if (session === null) return 0;
+    const unsettled = session.endedWhy === null ? this.clock.realSecondsSinceSettled() : 0;
+    return Math.max(0, this.sessionSeconds(session) - session.realSeconds - unsettled);
+  }
+}
