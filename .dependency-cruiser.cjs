@@ -78,7 +78,7 @@ module.exports = {
     row(
       'actions',
       '^server/features/([^/]+)/',
-      ['^server/features/$1/', '^server/(transact|action|vault|invitation|mail-stop)\\.ts$', '^db/queries/', shared],
+      ['^server/features/$1/', '^server/(transact|action|vault|invitation|mail-stop|caregiver-code)\\.ts$', '^db/queries/', shared],
       'An action loads, asks, writes: queries, rules, contracts. Another feature, mail, http or the queue would write what nobody sees in this action; use tx.tell, or share the rule or the query.',
     ),
     row(
@@ -97,7 +97,7 @@ module.exports = {
       '^server/(http|auth|mail)/',
       [
         '^server/$1/',
-        '^server/(transact|action|env|clock|vault|invitation|mail-stop)\\.ts$',
+        '^server/(transact|action|env|clock|vault|invitation|mail-stop|caregiver-code)\\.ts$',
         '^db/queries/(account|house)\\.ts$',
         '^db/client\\.ts$',
         '^locales/',
@@ -107,7 +107,7 @@ module.exports = {
     ),
     row(
       'server ground',
-      '^server/(action|env|clock|queue|vault|invitation|mail-stop)\\.ts$',
+      '^server/(action|env|clock|queue|vault|invitation|mail-stop|caregiver-code)\\.ts$',
       ['^server/(action|env|clock|queue|transact|vault)\\.ts$', '^db/queries/clock\\.ts$', '^db/client\\.ts$', shared],
       "The server's ground files are used by all; only main, api, jobs and the demo know every action.",
     ),
@@ -132,7 +132,7 @@ module.exports = {
       comment:
         'A file stands where the house has no room for it. Choose a folder from the table in DEVELOPERS.md, or decide about a new one.',
       from: {
-        path: '^(components/(?!(ui|forms|runtime|layout|features)/)|shared/(?!(values|rules|contracts|estimates)/)|server/(?!((http|auth|mail|demo|features)/|(main|api|jobs|queue|env|clock|transact|action|vault|invitation|mail-stop)\\.ts$)))',
+        path: '^(components/(?!(ui|forms|runtime|layout|features)/)|shared/(?!(values|rules|contracts|estimates)/)|server/(?!((http|auth|mail|demo|features)/|(main|api|jobs|queue|env|clock|transact|action|vault|invitation|mail-stop|caregiver-code)\\.ts$)))',
       },
       to: {},
     },
