@@ -1,6 +1,6 @@
 // The planned windows of a course, and what a window becomes when it closes undone.
 
-import { addDays, isDate, isZone, isoOf, parseInstant, weekdayOf } from '@/shared/values/zone';
+import { addDays, isDate, isZone, isoOf, localDate, parseInstant, weekdayOf } from '@/shared/values/zone';
 import { isHeldThrough, type HoldFacts } from './adherence';
 import { hoursOn } from './hours';
 
@@ -47,12 +47,18 @@ export function plannedWindows(schedule: ScheduleFacts): PlannedWindow[] {
   return windows;
 }
 
-/** The next window after the last planned one: where a session that was missed may move, if the prescription lets it. */
-export function windowAfter(schedule: ScheduleFacts, lastWindowFrom: string): PlannedWindow | null {
+/** The next window after the last planned one: where a missed session may move, if the prescription lets it. */
+export function windowAfter(
+  schedule: ScheduleFacts,
+  lastWindowFrom: string,
+): { readonly windowFrom: string; readonly windowTo: string } | null {
   const after = parseInstant(lastWindowFrom);
   if (after === undefined) return null;
-  const all = plannedWindows({ ...schedule, sessionsTotal: longestCourseDays });
-  return all.find(({ windowFrom }) => (parseInstant(windowFrom) ?? 0) > after) ?? null;
+  const day = localDate(after, schedule.zone);
+  const startsOn = day > schedule.startsOn ? day : schedule.startsOn;
+  // The day of the last window may come back as the first: two are enough.
+  const next = plannedWindows({ ...schedule, startsOn, sessionsTotal: 2 });
+  return next.find(({ windowFrom }) => (parseInstant(windowFrom) ?? 0) > after) ?? null;
 }
 
 /** The window of one local day, whatever weekday it is; null if there is none. */
