@@ -1,9 +1,7 @@
 // What "may a session start now?" is judged by, gathered in six statements. `gatherFacts` of shared/rules/clearance makes the
 // rule's facts of it; nothing is decided here.
 
-import { eq } from 'drizzle-orm';
 import type { Db } from '@/db/client';
-import { course } from '@/db/schema/course';
 import {
   listLockoutsForClearance,
   listPlannedOfCourse,
@@ -12,21 +10,6 @@ import {
 } from './clearance/history';
 import { loadPerson } from './clearance/person';
 import { readProtocolInForce } from './protocol';
-
-/** Locks a course: whatever decides about its sessions takes turns here. Null when there is none. */
-export async function lockCourse(db: Db, courseId: string) {
-  const [row] = await db
-    .select({
-      id: course.id,
-      participantId: course.participantId,
-      siteId: course.siteId,
-      closedAt: course.closedAt,
-    })
-    .from(course)
-    .where(eq(course.id, courseId))
-    .for('update');
-  return row ?? null;
-}
 
 /**
  * The record of one person as clearance needs it; null: no such participant.

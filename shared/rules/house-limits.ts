@@ -15,3 +15,30 @@ export const escalationMinutes = 30;
 
 /** A prescription is written anew at least once a year, as a screening is. Own choice. */
 export const longestPrescriptionDays = 366;
+
+/** Permits given out in an hour, counted by issue (safety rules §10): more is a device or an app gone wrong. */
+export const mostPermitsPerHour = 10;
+
+/** An event from further ahead than this cannot be: two monotonic clocks and a network drift by less. Own choice. */
+export const eventAheadSeconds = 5;
+
+/** Numbers of missing events told at once; the phone asks again. Own choice. */
+export const mostMissingTold = 1000;
+
+/** Points of a stored curve: one a pixel on the widest picture. */
+export const mostCurvePoints = 400;
+
+/** Without a final record a session counts as running this long past its planned end and all its pauses. Own choice. */
+export const recordGraceSeconds = 120;
+
+/** The next day's questions are asked on the following local days, this long after the session. Own choice. */
+export const nextDayAskedDays = 3;
+
+/** Skin photos: enough of one session, sharp enough to see redness, small enough for a phone's network. Own choices. */
+export const photoLimits = { mostPerSession: 5, mostPixels: 40_000_000, longestSidePixels: 1600, mostBytes: 8_000_000, jpegQuality: 82 } as const;
+
+/** Notices to a person wait for the morning between these local hours (guidance R70). */
+export const quietHours = { from: '21:00', to: '08:00' } as const;
+
+/** A nudge about a missed session is stale after this. Own choice. */
+export const nudgeLifeHours = 24;

@@ -99,8 +99,9 @@ export async function listSuppliesInUse(db: Db, participantId: string) {
       openedAt: supply.openedAt,
       maxUses: supply.maxUses,
       maxDays: supply.maxDays,
-      uses: sql<number>`(select count(*)::int from ${session} s where s.participant_id = ${supply.participantId}
-        and s.started_at >= ${supply.openedAt})`,
+      // Plain names: in a select from one table the query builder leaves table names out.
+      uses: sql<number>`(select count(*)::int from session s where s.participant_id = supply.participant_id
+        and s.started_at >= supply.opened_at)`,
     })
     .from(supply)
     .where(and(eq(supply.participantId, participantId), isNull(supply.closedAt), isNotNull(supply.openedAt)))
