@@ -132,7 +132,15 @@ module.exports = [
   },
   {
     files: ['scripts/**/*.mjs', 'tests/**/*.{mjs,cjs}', '*.{js,cjs,ts}', '.*.cjs'],
-    languageOptions: { globals: { process: 'readonly', console: 'readonly', __dirname: 'readonly' } },
+    languageOptions: {
+      globals: {
+        process: 'readonly',
+        console: 'readonly',
+        Buffer: 'readonly',
+        fetch: 'readonly',
+        __dirname: 'readonly',
+      },
+    },
     rules: { 'no-console': 'off', 'no-restricted-syntax': 'off' },
   },
   {
