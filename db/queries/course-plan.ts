@@ -1,7 +1,7 @@
 // Planned sessions of a course: made from a signed prescription, closed once, moved by a new row that names the old one.
 // Which windows there should be is the rules' business.
 
-import { and, asc, eq, isNull, sql } from 'drizzle-orm';
+import { and, asc, eq, gt, isNull, sql } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { plannedSession } from '@/db/schema/course';
 
@@ -89,12 +89,22 @@ export async function closePlanned(
   return rows.length > 0;
 }
 
-/** Cancels what is still open in a course, but for a row whose session is under way. Answers with how many. */
+/**
+ * Cancels what is still to come in a course. A row whose session is under way stays, and so does one whose window is over:
+ * that one was missed, whatever was signed since. Answers with how many.
+ */
 export async function cancelOpenPlanned(db: Db, courseId: string, at: string): Promise<number> {
   const rows = await db
     .update(plannedSession)
     .set({ closedAt: at, closedWhy: 'cancelled' })
-    .where(and(eq(plannedSession.courseId, courseId), isNull(plannedSession.closedAt), sql`not ${isUnderWay}`))
+    .where(
+      and(
+        eq(plannedSession.courseId, courseId),
+        isNull(plannedSession.closedAt),
+        gt(plannedSession.windowTo, at),
+        sql`not ${isUnderWay}`,
+      ),
+    )
     .returning({ id: plannedSession.id });
   return rows.length;
 }

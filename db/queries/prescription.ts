@@ -17,24 +17,24 @@ import {
   secondsOf,
 } from '@/shared/values/units';
 
-export interface PrescribedElectrode {
+export type PrescribedElectrode = {
   position: string;
   polarity: 'anode' | 'cathode';
   shape: 'pad';
   areaSquareCentimetre: number;
   share: number;
-}
+};
 
-export interface PrescribedDose {
+export type PrescribedDose = {
   waveform: 'tDCS';
   intensityMilliamp: number;
   rampUpSeconds: number;
   holdSeconds: number;
   rampDownSeconds: number;
   electrodes: PrescribedElectrode[];
-}
+};
 
-export interface PrescribedSchedule {
+export type PrescribedSchedule = {
   startsOn: string;
   days: number[];
   hoursFrom: string;
@@ -45,7 +45,7 @@ export interface PrescribedSchedule {
   maxPer7Days: number;
   expiresOn: string;
   makeUpMissed: boolean;
-}
+};
 
 /** What a signature is given for. */
 export interface PrescriptionContent {

@@ -1,8 +1,9 @@
 // Signatures: who signed what, when, with which meaning, over which content. Added, never changed; valid for the content whose
 // hash they carry and for no other.
 
-import { asc, inArray } from 'drizzle-orm';
+import { and, asc, eq, inArray } from 'drizzle-orm';
 import type { Db } from '@/db/client';
+import { account, membership } from '@/db/schema/account';
 import { signature } from '@/db/schema/course';
 
 export type SignatureMeaning = 'prescribed' | 'second_signature' | 'reviewed' | 'graded' | 'protocol';
@@ -55,4 +56,17 @@ export async function listSignatures(db: Db, subjectIds: readonly string[]): Pro
     .orderBy(asc(signature.createdAt), asc(signature.id));
   for (const row of rows) found.set(row.subjectId, [...(found.get(row.subjectId) ?? []), row]);
   return found;
+}
+
+/** Active clinicians of a site, by name: whose signature counts there. */
+export async function listSigners(
+  db: Db,
+  siteId: string,
+): Promise<{ accountId: string; name: string; email: string; language: string }[]> {
+  return db
+    .select({ accountId: account.id, name: account.name, email: account.email, language: account.language })
+    .from(account)
+    .innerJoin(membership, eq(membership.accountId, account.id))
+    .where(and(eq(membership.siteId, siteId), eq(account.role, 'clinician'), eq(account.state, 'active')))
+    .orderBy(asc(account.name), asc(account.id));
 }

@@ -118,7 +118,7 @@ export const writePrescription = contract({
   }),
   answer: PrescriptionView,
   status: 201,
-  refusals: ['prescription.over_limit', 'prescription.schedule', 'prescription.reason_missing', 'version.stale', 'participant.withdrawn', 'course.paused'],
+  refusals: ['prescription.over_limit', 'prescription.schedule', 'prescription.reason_missing', 'version.stale', 'participant.withdrawn'],
   touches: ['prescription', 'participant'],
   about: 'Writes a draft. A dose above a limit is refused with the row, the limit, its layer and its source; nothing is clamped.',
   example: {

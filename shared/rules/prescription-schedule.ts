@@ -47,7 +47,8 @@ export type ScheduleFinding = {
     | 'too_few_windows'
     | 'position_unknown'
     | 'position_twice'
-    | 'polarity_missing';
+    | 'polarity_missing'
+    | 'nothing_to_deliver';
   readonly facts?: Readonly<Record<string, string | number>>;
 };
 
@@ -177,20 +178,23 @@ export function scheduleFindings(
     : [];
 }
 
-/** Electrodes by name: each on a known position, no position twice, both polarities there. */
-export function montageFindings(
-  electrodes: readonly { readonly position: string; readonly polarity: string }[],
-): ScheduleFinding[] {
+/** What the limits do not judge: current there at all, each electrode on a known place, none twice, both polarities. */
+export function montageFindings(dose: {
+  readonly intensityMilliamp: number;
+  readonly electrodes: readonly { readonly position: string; readonly polarity: string }[];
+}): ScheduleFinding[] {
   const findings: ScheduleFinding[] = [];
+  const { electrodes, intensityMilliamp } = dose;
+  if (!(intensityMilliamp > 0)) findings.push({ path: 'dose.intensityMilliamp', code: 'nothing_to_deliver' });
   electrodes.forEach(({ position }, at) => {
     const path = `dose.electrodes.${at}.position`;
+    const isTwice = electrodes.slice(0, at).some((other) => other.position === position);
     if (!isPosition(position)) findings.push({ path, code: 'position_unknown', facts: { position } });
-    else if (electrodes.slice(0, at).some((other) => other.position === position))
-      findings.push({ path, code: 'position_twice', facts: { position } });
+    else if (isTwice) findings.push({ path, code: 'position_twice', facts: { position } });
   });
-  const last = electrodes.length - 1;
-  if (new Set(electrodes.map(({ polarity }) => polarity)).size < 2)
-    findings.push({ path: `dose.electrodes.${last}.polarity`, code: 'polarity_missing' });
+  const polarities = new Set(electrodes.map(({ polarity }) => polarity));
+  if (polarities.size < 2)
+    findings.push({ path: `dose.electrodes.${Math.max(electrodes.length - 1, 0)}.polarity`, code: 'polarity_missing' });
   return findings;
 }
 

@@ -53,3 +53,8 @@ export function signing(facts: SigningFacts, asker: string, meaning: Prescribing
   const takesEffect = meanings.has('prescribed') && (facts.tier === 'accept' || meanings.has('second_signature'));
   return { allowed: true, takesEffect };
 }
+
+/** The worklist's matter of a prescription that waits for its second signature. */
+export function secondSignatureMatter(prescriptionId: string): string {
+  return `second_signature:${prescriptionId}`;
+}
