@@ -23,3 +23,14 @@ function isKey(value: unknown): value is string | number | null {
   // PostgreSQL keeps no NUL in text; such a key was never a row's.
   return value === null || typeof value === 'number' || (typeof value === 'string' && !value.includes('\u0000'));
 }
+
+/** A page of `limit` rows out of the `limit + 1` that were asked for, and where the next one begins. */
+export function cutPage<T>(
+  rows: readonly T[],
+  limit: number,
+  keysOf: (row: T) => CursorValues,
+): { page: T[]; nextCursor: string | null } {
+  const page = rows.slice(0, limit);
+  const last = page.at(-1);
+  return { page, nextCursor: last !== undefined && rows.length > limit ? encodeCursor(keysOf(last)) : null };
+}

@@ -1,0 +1,240 @@
+// Participants: enrolled, listed, withdrawn. Append-only but for the account that accepts, once, and the closing at withdrawal.
+
+import { and, asc, desc, eq, gt, inArray, isNull, or, sql, type SQL } from 'drizzle-orm';
+import type { Db } from '@/db/client';
+import { participant } from '@/db/schema/participant';
+import { diary, lockout, session, worklistItem } from '@/db/schema/session';
+import { site, siteCounter } from '@/db/schema/site';
+import type { ParticipantRecord } from './reach';
+
+/** The next running number of a site. Holds the site's counter until the transaction ends, so numbers follow each other. */
+export async function takeNumber(db: Db, siteId: string): Promise<number> {
+  const [row] = await db
+    .insert(siteCounter)
+    .values({ siteId, lastNumber: 1 })
+    .onConflictDoUpdate({ target: siteCounter.siteId, set: { lastNumber: sql`${siteCounter.lastNumber} + 1` } })
+    .returning({ number: siteCounter.lastNumber });
+  if (!row) throw new Error('the counter of the site gave no number');
+  return row.number;
+}
+
+export type NewParticipant = Omit<ParticipantRecord, 'accountId' | 'closedAt' | 'closedWhy'>;
+
+export async function insertParticipant(db: Db, row: NewParticipant): Promise<void> {
+  await db.insert(participant).values(row);
+}
+
+/** Closes a person's record, once: withdrawn. */
+export async function closeParticipant(db: Db, participantId: string, at: string): Promise<void> {
+  await db
+    .update(participant)
+    .set({ closedAt: at, closedWhy: 'withdrawn' })
+    .where(and(eq(participant.id, participantId), isNull(participant.closedAt)));
+}
+
+export interface ListedParticipant {
+  id: string;
+  code: string;
+  name: string;
+  siteId: string;
+  siteName: string;
+  createdAt: string;
+}
+
+export type ParticipantSort = 'name' | 'code' | 'since';
+
+/** States as the list can be asked for; what each needs at least stands in `needs`. */
+export type AskedState = 'invited' | 'training' | 'ready' | 'too_early' | 'held' | 'paused' | 'finished' | 'withdrawn';
+
+// Plain names: a correlated subquery must say whose id it means.
+const exists = (from: string) => sql.raw(`exists (select 1 from ${from})`);
+const hasOpenCourse = exists('course c where c.participant_id = participant.id and c.closed_at is null');
+const hasCourse = exists('course c where c.participant_id = participant.id');
+const isSigned = exists(
+  'prescription p where p.participant_id = participant.id and p.signed_at is not null and p.closed_at is null',
+);
+const isPaused = exists(
+  'course_pause u join course c on c.id = u.course_id where c.participant_id = participant.id and u.closed_at is null',
+);
+
+/** What must be so of everybody in a state, so that few are judged; whether they are in it is the rule's answer. */
+function needsOf(state: AskedState, now: string): SQL | undefined {
+  const isHere = isNull(participant.closedAt);
+  const isJoined = sql`${participant.accountId} is not null`;
+  switch (state) {
+    case 'withdrawn':
+      return or(sql`${participant.closedAt} is not null`, hasCourse);
+    case 'invited':
+      return and(isHere, isNull(participant.accountId));
+    case 'held':
+      return and(
+        isHere,
+        sql`exists (select 1 from ${lockout} l where l.participant_id = "participant"."id" and l.closed_at is null
+          and (l.until is null or l.until > ${now}))`,
+      );
+    case 'paused':
+      return and(isHere, isJoined, isPaused);
+    case 'finished':
+      return and(isHere, hasCourse);
+    case 'ready':
+    case 'too_early':
+      return and(isHere, isJoined, hasOpenCourse, isSigned);
+    case 'training':
+      return and(isHere, isJoined);
+  }
+}
+
+/** `%` and `_` that somebody typed mean themselves. */
+function literally(text: string): string {
+  return text.replace(/[\\%_]/g, (sign) => `\\${sign}`);
+}
+
+/** Beginning of any word of the name, or of the code; by the code alone for those who do not see names. */
+function matches(search: string, byName: boolean): SQL | undefined {
+  const typed = literally(search.toLowerCase());
+  const byCode = sql`lower(${participant.code}) like ${`${typed}%`}`;
+  if (!byName) return byCode;
+  const name = sql`lower(${participant.name})`;
+  return or(byCode, sql`${name} like ${`${typed}%`}`, sql`${name} like ${`% ${typed}%`}`);
+}
+
+/** The sort key as it stands in the cursor, beside the id. */
+const sortKeys = {
+  name: sql<string>`lower(${participant.name})`,
+  code: sql<string>`${participant.code}`,
+  since: sql<string>`to_char(${participant.createdAt} at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS.MS"Z"')`,
+} as const;
+
+export interface ParticipantWanted {
+  siteIds: readonly string[];
+  search: string | undefined;
+  /** False for pseudonymous readers: nothing about a name may be learnt by asking. */
+  byName: boolean;
+  state: AskedState | undefined;
+  sort: ParticipantSort;
+  limit: number;
+  after: { key: string; id: string } | null;
+}
+
+/** One page of people, candidates for `state` only: each still has to be judged. */
+export async function listParticipants(
+  db: Db,
+  want: ParticipantWanted,
+  now: string,
+): Promise<(ListedParticipant & { key: string })[]> {
+  if (want.siteIds.length === 0) return [];
+  const key = sortKeys[want.sort];
+  const after = want.after && sql`(${key}, ${participant.id}) > (${want.after.key}, ${want.after.id}::uuid)`;
+  return db
+    .select({
+      id: participant.id,
+      code: participant.code,
+      name: participant.name,
+      siteId: participant.siteId,
+      siteName: site.name,
+      createdAt: participant.createdAt,
+      key,
+    })
+    .from(participant)
+    .innerJoin(site, eq(site.id, participant.siteId))
+    .where(
+      and(
+        inArray(participant.siteId, [...want.siteIds]),
+        want.search ? matches(want.search, want.byName) : undefined,
+        want.state ? needsOf(want.state, now) : undefined,
+        after ?? undefined,
+      ),
+    )
+    .orderBy(asc(key), asc(participant.id))
+    .limit(want.limit);
+}
+
+export interface LastDiary {
+  participantId: string;
+  at: string;
+  /** As stored. */
+  answers: unknown;
+}
+
+/** The newest diary after a session of each person. */
+export async function listLastDiaries(db: Db, participantIds: readonly string[]): Promise<Map<string, LastDiary>> {
+  if (participantIds.length === 0) return new Map();
+  const rows = await db
+    .selectDistinctOn([diary.participantId], {
+      participantId: diary.participantId,
+      at: diary.writtenAt,
+      answers: diary.answers,
+    })
+    .from(diary)
+    .where(and(inArray(diary.participantId, [...participantIds]), eq(diary.kind, 'after')))
+    .orderBy(diary.participantId, desc(diary.writtenAt), desc(diary.id));
+  return new Map(rows.map((row) => [row.participantId, row]));
+}
+
+/** Open lockouts of one person with the row of the worklist that waits for them, newest first. */
+export async function listLockoutsWithItems(db: Db, participantId: string, now: string) {
+  return db
+    .selectDistinctOn([lockout.openedAt, lockout.id], {
+      id: lockout.id,
+      level: lockout.level,
+      code: lockout.code,
+      source: lockout.source,
+      openedAt: lockout.openedAt,
+      until: lockout.until,
+      closedAt: lockout.closedAt,
+      closedWhy: lockout.closedWhy,
+      worklistItemId: worklistItem.id,
+    })
+    .from(lockout)
+    .leftJoin(worklistItem, and(eq(worklistItem.lockoutId, lockout.id), isNull(worklistItem.closedAt)))
+    .where(
+      and(
+        eq(lockout.participantId, participantId),
+        isNull(lockout.closedAt),
+        or(isNull(lockout.until), gt(lockout.until, now)),
+      ),
+    )
+    .orderBy(desc(lockout.openedAt), desc(lockout.id));
+}
+
+export interface TrendRow {
+  sessionId: string;
+  courseId: string;
+  plannedSessionId: string;
+  at: string;
+  /** Worst of the diary's pages. */
+  headache: number | null;
+  worstEffect: number | null;
+  /** As stored: answers of the diary after the session, and what the record's end computed. */
+  answers: unknown;
+  summary: unknown;
+  deliveredUc: number | null;
+  plannedUc: number;
+}
+
+/** Sessions that began, oldest first, with what was felt. */
+export async function listTrends(db: Db, participantId: string): Promise<TrendRow[]> {
+  const worst = (column: 'headache' | 'worst_strength') =>
+    sql<number | null>`(select max(d.${sql.raw(column)}) from ${diary} d where d.session_id = "session"."id")`;
+  return db
+    .select({
+      sessionId: sql<string>`"session"."id"`,
+      courseId: session.courseId,
+      plannedSessionId: session.plannedSessionId,
+      at: sql<string>`"session"."started_at"`.mapWith(session.startedAt),
+      headache: worst('headache'),
+      worstEffect: worst('worst_strength'),
+      answers: sql<unknown>`(select d.answers from ${diary} d where d.session_id = "session"."id" and d.kind = 'after')`,
+      summary: session.summary,
+      deliveredUc: session.deliveredUc,
+      plannedUc: sql<number>`(select p.charge_uc from permit p where p.id = "session"."permit_id")`.mapWith(Number),
+    })
+    .from(session)
+    .where(
+      and(
+        eq(session.participantId, participantId),
+        sql`${session.startedAt} is not null and ${session.closedWhy} is distinct from 'unused'`,
+      ),
+    )
+    .orderBy(asc(session.startedAt), asc(session.id));
+}
