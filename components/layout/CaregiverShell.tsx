@@ -49,13 +49,8 @@ function CaregiverPage({ title, lead, backHref, children, footer, banner }: Care
                 </Text>
               )}
             </View>
-            {account.personName ? (
-              <Text size="small" tone="muted">
-                {account.personName}
-              </Text>
-            ) : null}
             {account.onSignOut ? (
-              <Button kind="quiet" size="small" label={t('action.signOut')} onPress={account.onSignOut} />
+              <Button kind="quiet" size="small" flush label={t('action.signOut')} onPress={account.onSignOut} />
             ) : null}
           </View>
         }

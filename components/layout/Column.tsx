@@ -3,7 +3,7 @@
  * must never let its foot cover the content: the foot takes its own room at the end of the page.
  */
 import type { ReactNode } from 'react';
-import { View } from 'react-native';
+import { View, useWindowDimensions } from 'react-native';
 import { mainId } from '@/components/layout/page';
 import { readingColumnRem, space, useTheme } from '@/components/ui/theme';
 
@@ -15,10 +15,25 @@ export interface ColumnProps {
   /** Height of what stands below the foot and stays in view too. */
   footOffset?: number;
   widthRem?: number;
+  /** Stays in view even where that leaves little room to read: for Stop alone. */
+  footAlways?: boolean;
 }
 
-export function Column({ head, children, foot, footOffset = 0, widthRem = readingColumnRem }: ColumnProps) {
+/**
+ * Lowest window, in rem, in which something may stay in view while the page scrolls under it. In less (a phone on its
+ * side, text at 200 %) it would leave too little to read. Own choice.
+ */
+const roomyRem = 30;
+
+export function useIsRoomy(): boolean {
+  const { rem } = useTheme();
+  const { height } = useWindowDimensions();
+  return height >= rem(roomyRem);
+}
+
+export function Column({ head, children, foot, footOffset = 0, widthRem = readingColumnRem, footAlways }: ColumnProps) {
   const { colour, rem } = useTheme();
+  const isRoomy = useIsRoomy();
   const width = { width: '100%', maxWidth: rem(widthRem), alignSelf: 'center', paddingHorizontal: space[5] } as const;
   return (
     <>
@@ -32,7 +47,13 @@ export function Column({ head, children, foot, footOffset = 0, widthRem = readin
           {children}
         </View>
         {foot ? (
-          <View style={{ position: 'sticky', bottom: footOffset, backgroundColor: colour.surface, zIndex: 1 }}>
+          <View
+            style={{
+              backgroundColor: colour.surface,
+              zIndex: 1,
+              ...(isRoomy || footAlways ? { position: 'sticky', bottom: isRoomy ? footOffset : space[0] } : {}),
+            }}
+          >
             <View style={{ ...width, gap: space[3], paddingTop: space[3], paddingBottom: space[4] }}>{foot}</View>
           </View>
         ) : null}

@@ -6,7 +6,7 @@ import { Link as RouterLink, type Href } from 'expo-router';
 import { useState, type ReactNode } from 'react';
 import { View, type TextStyle } from 'react-native';
 import { useTranslation } from 'react-i18next';
-import { Column } from '@/components/layout/Column';
+import { Column, useIsRoomy } from '@/components/layout/Column';
 import { PageTitle, SkipLink } from '@/components/layout/page';
 import { useShellAccount } from '@/components/layout/shell-account';
 import { Icon } from '@/components/ui/Icon';
@@ -25,6 +25,8 @@ export interface ParticipantShellProps {
   date?: string;
   /** Shown at the head's end; the person's name, leading to their own page, unless given. */
   headEnd?: ReactNode;
+  /** `huge` for the one number that counts while a session runs. */
+  titleSize?: 'display' | 'huge';
   /** A line under the heading. */
   lead?: string;
   children?: ReactNode;
@@ -83,14 +85,14 @@ function TabLink({ id, href, isCurrent }: { id: ParticipantTab; href: Href; isCu
 function TabBar({ current }: { current?: ParticipantTab }) {
   const { t } = useTranslation('common');
   const { colour, rem } = useTheme();
+  const isRoomy = useIsRoomy();
   return (
     <View
       role="navigation"
       aria-label={t('nav.main')}
       dataSet={{ print: 'no' }}
       style={{
-        position: 'sticky',
-        bottom: space[0],
+        ...(isRoomy ? { position: 'sticky', bottom: space[0] } : {}),
         zIndex: 2,
         backgroundColor: colour.raised,
         borderTopWidth: stroke.hair,
@@ -107,12 +109,12 @@ function TabBar({ current }: { current?: ParticipantTab }) {
 }
 
 function ParticipantPage(props: ParticipantShellProps) {
-  const { title, tab, date, headEnd, lead, children, footer, banner, hideTabs } = props;
+  const { title, titleSize, tab, date, headEnd, lead, children, footer, banner, hideTabs } = props;
   const { colour, rem } = useTheme();
   const account = useShellAccount();
   const name =
     account.personName && account.accountHref && !hideTabs ? (
-      <Link href={account.accountHref} size="small" weight="regular" tone="muted">
+      <Link href={account.accountHref} size="small" weight="regular" tone="muted" plain>
         {account.personName}
       </Link>
     ) : null;
@@ -123,6 +125,7 @@ function ParticipantPage(props: ParticipantShellProps) {
       <Column
         footOffset={hideTabs ? 0 : rem(barRem) + stroke.hair}
         foot={footer}
+        footAlways={hideTabs}
         head={
           <View
             style={{
@@ -141,7 +144,7 @@ function ParticipantPage(props: ParticipantShellProps) {
         }
       >
         <View style={{ gap: space[1], paddingBottom: space[1] }}>
-          <PageTitle>{title}</PageTitle>
+          <PageTitle size={titleSize}>{title}</PageTitle>
           {lead ? <Text tone="muted">{lead}</Text> : null}
         </View>
         {children}

@@ -91,9 +91,7 @@ function Person() {
         )
       ) : null}
       {account.onSignOut ? (
-        <View style={{ marginStart: -space[3] }}>
-          <Button kind="quiet" size="small" label={t('action.signOut')} onPress={account.onSignOut} />
-        </View>
+        <Button kind="quiet" size="small" flush label={t('action.signOut')} onPress={account.onSignOut} />
       ) : null}
     </View>
   );
@@ -116,7 +114,8 @@ export function Rail({ current }: { current?: RailId }) {
   const { colour, rem } = useTheme();
   return (
     <View
-      dataSet={{ print: 'no', rail: 'yes' }}
+      role="banner"
+      dataSet={{ print: 'no' }}
       style={{
         width: rem(railRem),
         flexShrink: 0,
@@ -132,7 +131,7 @@ export function Rail({ current }: { current?: RailId }) {
         <View role="navigation" aria-label={t('nav.main')} style={{ flexGrow: 1 }}>
           <Places current={current} />
         </View>
-        <View role="complementary" aria-label={t('nav.account')}>
+        <View role="group" aria-label={t('nav.account')}>
           <Person />
         </View>
       </View>
@@ -146,6 +145,7 @@ export function TopBar({ current }: { current?: RailId }) {
   const [isOpen, setOpen] = useState(false);
   return (
     <View
+      role="banner"
       dataSet={{ print: 'no' }}
       style={{
         position: 'sticky',
@@ -157,7 +157,6 @@ export function TopBar({ current }: { current?: RailId }) {
       }}
     >
       <View
-        role="banner"
         style={{
           flexDirection: 'row',
           alignItems: 'center',
@@ -182,7 +181,7 @@ export function TopBar({ current }: { current?: RailId }) {
           <View role="navigation" aria-label={t('nav.main')}>
             <Places current={current} onPress={() => setOpen(false)} />
           </View>
-          <View role="complementary" aria-label={t('nav.account')}>
+          <View role="group" aria-label={t('nav.account')}>
             <Person />
           </View>
         </View>

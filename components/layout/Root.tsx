@@ -26,7 +26,8 @@ export function Root() {
           queries: {
             staleTime: freshMs,
             gcTime: keptMs,
-            retry: (count, error) => error instanceof ApiProblem && (error.offline || error.problem.status >= 500) && count < tries,
+            retry: (count, error) =>
+              error instanceof ApiProblem && (error.offline || error.problem.status >= 500) && count < tries,
           },
           mutations: { retry: false },
         },

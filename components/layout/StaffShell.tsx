@@ -118,7 +118,14 @@ function StaffPage(props: StaffShellProps) {
             {actions ? (
               <View
                 dataSet={{ print: 'no' }}
-                style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[3] }}
+                style={{
+                  flexDirection: 'row',
+                  flexWrap: 'wrap',
+                  alignItems: 'center',
+                  flexShrink: 1,
+                  maxWidth: '100%',
+                  gap: space[3],
+                }}
               >
                 {actions}
               </View>

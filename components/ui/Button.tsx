@@ -26,6 +26,8 @@ export interface ButtonProps {
   /** Why it is disabled, or what happens when it is pressed; shown under it and read with it. */
   reason?: string;
   icon?: ReactNode;
+  /** A quiet button whose word stands on the line of the text above it. */
+  flush?: boolean;
   /** For screen readers, where the label alone would not tell which of many it is. Must begin with the label. */
   accessibleLabel?: string;
   expanded?: boolean;
@@ -60,7 +62,19 @@ function paintOf(kind: ButtonKind, colour: Colours): Paint {
 }
 
 export function Button(props: ButtonProps) {
-  const { label, onPress, kind = 'primary', size = 'regular', grow, busy, busyLabel, disabled, reason, icon } = props;
+  const {
+    label,
+    onPress,
+    kind = 'primary',
+    size = 'regular',
+    grow,
+    busy,
+    busyLabel,
+    disabled,
+    reason,
+    icon,
+    flush,
+  } = props;
   const { t } = useTranslation('common');
   const theme = useTheme();
   const reasonId = useId();
@@ -84,6 +98,7 @@ export function Button(props: ButtonProps) {
     justifyContent: 'center',
     gap: space[2],
     ...(grow ? { alignSelf: 'stretch' } : {}),
+    ...(flush ? { marginStart: -(space[3] + stroke.firm) } : {}),
   });
 
   return (

@@ -37,8 +37,7 @@ export function Card(props: CardProps) {
     grow,
   } = props;
   const { colour, density } = useTheme();
-  const room =
-    padding === 'none' ? space[0] : padding === 'close' ? space[3] : density === 'reading' ? space[5] : space[5];
+  const room = padding === 'none' ? space[0] : padding === 'close' ? space[3] : space[5];
   return (
     <View
       style={{
@@ -54,7 +53,7 @@ export function Card(props: CardProps) {
       {edge ? (
         <View style={{ width: stroke.edge, backgroundColor: edge === 'muted' ? colour.line : colour[edge] }} />
       ) : null}
-      <View style={{ flex: 1, minWidth: 0, padding: room, gap: space[3] }}>
+      <View style={{ flex: 1, minWidth: 0, padding: room, gap: density === 'reading' ? space[4] : space[3] }}>
         {heading ? (
           <View
             style={{ gap: space[1], ...(padding === 'none' ? { padding: space[4], paddingBottom: space[1] } : {}) }}

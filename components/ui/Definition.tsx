@@ -27,7 +27,7 @@ export interface DefinitionProps {
 export function Definition({ rows, layout = 'rows', ruled, labelRem }: DefinitionProps) {
   const { colour, rem, density } = useTheme();
   const isRow = layout === 'rows';
-  const labelWidth = rem(labelRem ?? (density === 'reading' ? 7.5 : 9));
+  const labelWidth = rem(labelRem ?? (density === 'reading' ? 7 : 9));
   return (
     <View
       style={

@@ -24,22 +24,25 @@ const shapeOf: Record<StateTone, IconName> = {
 export function Tag({ tone = 'muted', label, bare }: TagProps) {
   const { colour, rem } = useTheme();
   return (
-    <View
-      style={{
-        flexDirection: 'row',
-        alignItems: 'center',
-        alignSelf: 'flex-start',
-        gap: space[1] + space.half,
-        paddingHorizontal: space[2],
-        paddingVertical: space.half,
-        borderRadius: radius / 2,
-        backgroundColor: tintOf(colour, tone),
-      }}
-    >
-      {bare ? null : <Icon name={shapeOf[tone]} tone={tone} size={rem(0.75)} />}
-      <Text size="fine" weight="bold" tone={tone}>
-        {label}
-      </Text>
+    // The outer row lets the tag keep its own width in a column and its place on the line in a row.
+    <View style={{ flexDirection: 'row', maxWidth: '100%' }}>
+      <View
+        style={{
+          flexDirection: 'row',
+          alignItems: 'center',
+          flexShrink: 1,
+          gap: space[1] + space.half,
+          paddingHorizontal: space[2],
+          paddingVertical: space.half,
+          borderRadius: radius / 2,
+          backgroundColor: tintOf(colour, tone),
+        }}
+      >
+        {bare ? null : <Icon name={shapeOf[tone]} tone={tone} size={rem(0.75)} />}
+        <Text size="fine" weight="bold" tone={tone}>
+          {label}
+        </Text>
+      </View>
     </View>
   );
 }

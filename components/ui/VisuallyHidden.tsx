@@ -12,14 +12,20 @@ export interface VisuallyHiddenProps {
   children: ReactNode;
   id?: string;
   heading?: TextProps['heading'];
+  /** Holds more than text: a table, a list. */
+  block?: boolean;
 }
 
-export function VisuallyHidden({ children, id, heading }: VisuallyHiddenProps) {
+export function VisuallyHidden({ children, id, heading, block }: VisuallyHiddenProps) {
   return (
     <View style={outOfSight}>
-      <Text id={id} heading={heading}>
-        {children}
-      </Text>
+      {block ? (
+        children
+      ) : (
+        <Text id={id} heading={heading}>
+          {children}
+        </Text>
+      )}
     </View>
   );
 }

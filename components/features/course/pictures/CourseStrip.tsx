@@ -81,7 +81,14 @@ export function CourseStrip({ marks, size, label, onPressMark }: CourseStripProp
     <View
       role="list"
       aria-label={label}
-      style={{ flexDirection: 'row', flexWrap: 'wrap', columnGap: measure.weekGap * scale, rowGap: gap * 2 }}
+      style={{
+        flexDirection: 'row',
+        flexWrap: 'wrap',
+        flexShrink: 1,
+        maxWidth: '100%',
+        columnGap: measure.weekGap * scale,
+        rowGap: onPressMark ? space[0] : gap * 2,
+      }}
     >
       {weeksOf(marks).map((week) => (
         <View key={week[0]?.number} role="none" style={{ flexDirection: 'row', flexWrap: 'wrap', gap }}>

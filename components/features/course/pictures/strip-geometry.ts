@@ -91,9 +91,9 @@ export function markParts(mark: MarkInput, measure: StripMeasure): MarkPart[] {
         { kind: 'stroke', d: `M${corner(0, height * 0.56)} H${place(width)}`, role: 'stop', width: line * 1.5 },
       ];
     case 'missed':
-      return [{ kind: 'dot', ...middle, r: height * 0.15, role: 'muted' }];
+      return [{ kind: 'dot', ...middle, r: Math.max(1.75, height * 0.15), role: 'muted' }];
     case 'excused':
-      return [{ kind: 'ring', ...middle, r: height * 0.18, role: 'muted', width: line * 0.8 }];
+      return [{ kind: 'ring', ...middle, r: Math.max(2, height * 0.18), role: 'muted', width: line * 0.8 }];
     case 'cancelled':
       return [
         {

@@ -15,7 +15,7 @@ export interface LimitBarProps {
   siteLimit?: number;
   /** The end of the bar. */
   ceiling: number;
-  /** Up to where it is the usual; a fine tick. */
+  /** Up to where it is the usual; a short tick above the bar. */
   routine?: number;
   /** Which layer binds here: "Site limit 4.0 C". */
   layerText: string;
@@ -23,7 +23,7 @@ export interface LimitBarProps {
   sourceText: string;
   /** `action` = inside, `caution` = above the routine, `stop` = refused. */
   tone?: Extract<StateTone, 'action' | 'steady' | 'caution' | 'stop'>;
-  /** The value before an amendment, as a hollow tick. */
+  /** The value before an amendment, as a short tick below the bar. */
   before?: number;
 }
 
@@ -78,32 +78,8 @@ export function LimitBar(props: LimitBarProps) {
         <View style={{ height, backgroundColor: colour.sunken, borderWidth: stroke.hair, borderColor: colour.line }}>
           <View style={{ height: '100%', width: percent(value), backgroundColor: colour[tone] }} />
         </View>
-        {routine === undefined ? null : (
-          <View
-            style={{
-              position: 'absolute',
-              start: percent(routine),
-              top: space[1],
-              height,
-              width: stroke.hair,
-              backgroundColor: colour.muted,
-            }}
-          />
-        )}
-        {before === undefined ? null : (
-          <View
-            style={{
-              position: 'absolute',
-              start: percent(before),
-              top: space[1] - space.half,
-              height: height + space[1],
-              width: stroke.hair,
-              borderStartWidth: stroke.firm,
-              borderStyle: 'dashed',
-              borderColor: colour.muted,
-            }}
-          />
-        )}
+        {routine === undefined ? null : <Tick at={percent(routine)} top={space[0]} height={space[1]} />}
+        {before === undefined ? null : <Tick at={percent(before)} top={height + space[1]} height={space[1]} />}
         {siteLimit === undefined ? null : (
           <View
             style={{
@@ -122,5 +98,13 @@ export function LimitBar(props: LimitBarProps) {
         {`${layerText} · ${sourceText}`}
       </Text>
     </View>
+  );
+}
+
+/** A short mark outside the bar: above it where the usual ends, below it where the value stood before. */
+function Tick({ at, top, height }: { at: `${number}%`; top: number; height: number }) {
+  const { colour } = useTheme();
+  return (
+    <View style={{ position: 'absolute', start: at, top, height, width: stroke.firm, backgroundColor: colour.muted }} />
   );
 }

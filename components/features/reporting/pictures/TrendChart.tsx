@@ -18,6 +18,7 @@ import {
 import { Button } from '@/components/ui/Button';
 import { Table } from '@/components/ui/Table';
 import { Text } from '@/components/ui/Text';
+import { VisuallyHidden } from '@/components/ui/VisuallyHidden';
 import { fontFamily, space, stroke, useTheme, type StateTone } from '@/components/ui/theme';
 
 export interface TrendRow {
@@ -215,11 +216,18 @@ export function TrendChart(props: TrendChartProps) {
       <Button
         kind="quiet"
         size="small"
+        flush
         label={isTableShown ? t('trend.hideTable') : t('trend.showTable')}
         expanded={isTableShown}
         onPress={() => setTableShown(!isTableShown)}
       />
-      {isTableShown ? <TrendTable {...props} /> : null}
+      {isTableShown ? (
+        <TrendTable {...props} />
+      ) : (
+        <VisuallyHidden block>
+          <TrendTable {...props} />
+        </VisuallyHidden>
+      )}
     </View>
   );
 }

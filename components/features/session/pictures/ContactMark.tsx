@@ -24,35 +24,38 @@ export function ContactMark({ quality, word }: ContactMarkProps) {
   const tone = toneOf[quality];
   const side = rem(0.5);
   return (
-    <View
-      style={{
-        flexDirection: 'row',
-        alignItems: 'center',
-        alignSelf: 'flex-start',
-        gap: space[1],
-        paddingHorizontal: space[2] + space.half,
-        paddingVertical: space[1],
-        borderRadius: radius / 2,
-        backgroundColor: tintOf(colour, tone),
-      }}
-    >
-      {[0, 1, 2].map((index) => (
-        <View
-          key={index}
-          style={{
-            width: side,
-            height: side,
-            borderRadius: pill,
-            borderWidth: stroke.hair,
-            borderColor: colour[tone],
-            backgroundColor: index < dotsOf[quality] ? colour[tone] : 'transparent',
-          }}
-        />
-      ))}
-      <View style={{ paddingStart: space[1] }}>
-        <Text size="fine" weight="bold" tone={tone}>
-          {word ?? t(`contact.${quality}`)}
-        </Text>
+    <View style={{ flexDirection: 'row' }}>
+      <View
+        style={{
+          flexDirection: 'row',
+          alignItems: 'center',
+          gap: space[1],
+          paddingHorizontal: space[2] + space.half,
+          paddingVertical: space[1],
+          borderRadius: radius / 2,
+          backgroundColor: tintOf(colour, tone),
+        }}
+      >
+        <View role="img" aria-hidden style={{ flexDirection: 'row', gap: space[1] }}>
+          {[0, 1, 2].map((index) => (
+            <View
+              key={index}
+              style={{
+                width: side,
+                height: side,
+                borderRadius: pill,
+                borderWidth: stroke.hair,
+                borderColor: colour[tone],
+                backgroundColor: index < dotsOf[quality] ? colour[tone] : 'transparent',
+              }}
+            />
+          ))}
+        </View>
+        <View style={{ paddingStart: space[1] }}>
+          <Text size="fine" weight="bold" tone={tone}>
+            {word ?? t(`contact.${quality}`)}
+          </Text>
+        </View>
       </View>
     </View>
   );
