@@ -6,7 +6,7 @@ import { minuteMilliseconds } from '@/shared/values/units';
 import { isZone, localDate, parseInstant } from '@/shared/values/zone';
 import { ageYearsOn } from '../age';
 import { ceilings } from '../ceilings';
-import { Known } from '../known';
+import { type Known } from '../known';
 import type { ClearanceFacts, PastSessionFacts } from './facts';
 
 export type PastSession = {
@@ -41,6 +41,8 @@ function readSession(known: Known, facts: PastSessionFacts, index: number, now: 
   const name = `sessions.${index}`;
   const state = known.word(`${name}.state`, facts.state, sessionFactStates);
   if (state === 'void') return undefined;
+  // What else would have to be known depends on the state.
+  if (state === undefined) return { state: 'closed', isOpen: false };
   const amounts = {
     chargeCoulomb: known.amount(`${name}.charge_C`, facts.chargeCoulomb),
     minutes: known.amount(`${name}.minutes`, facts.minutes),
