@@ -23,7 +23,7 @@ export interface PlannedRecord {
 const isUnderWay = sql<boolean>`exists (
   select 1 from session s where s.planned_session_id = planned_session.id and s.started_at is not null and s.closed_at is null)`;
 
-/** A row that was cancelled while its phone was out of reach, and in which something was delivered after all. */
+/** A row that was cancelled or moved while its phone was out of reach, and in which something was delivered after all. */
 const isDelivered = sql<boolean>`exists (
   select 1 from session s where s.planned_session_id = planned_session.id and s.closed_why = 'recorded'
     and s.completeness in ('complete', 'partial'))`;
@@ -31,7 +31,7 @@ const isDelivered = sql<boolean>`exists (
 const stateColumn = sql<PlannedState>`case
   when ${isUnderWay} then 'running'
   when planned_session.closed_why is null then 'open'
-  when planned_session.closed_why = 'cancelled' and ${isDelivered} then 'done'
+  when planned_session.closed_why in ('cancelled', 'moved') and ${isDelivered} then 'done'
   else planned_session.closed_why end`;
 
 const columns = {

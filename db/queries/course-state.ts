@@ -122,10 +122,10 @@ export interface CourseOverview {
 
 // Plain names in what follows: a correlated subquery must say whose id it means.
 
-/** Sessions done, of each course: closed as done, or delivered in a row that an amendment had cancelled. */
+/** Sessions done, of each course: closed as done, or delivered in a row that had been cancelled or moved. */
 const sessionsDone = sql<number>`(
   select count(*)::int from planned_session p where p.course_id = course.id and (
-    p.closed_why = 'done' or (p.closed_why = 'cancelled' and exists (
+    p.closed_why = 'done' or (p.closed_why in ('cancelled', 'moved') and exists (
       select 1 from session s where s.planned_session_id = p.id and s.closed_why = 'recorded'
         and s.completeness in ('complete', 'partial')))))`;
 
