@@ -16,6 +16,7 @@ import participants from './participants.json';
 import prescription from './prescription.json';
 import protocol from './protocol.json';
 import publicWords from './public.json';
+import review from './review.json';
 import session from './session.json';
 import site from './site.json';
 import staff from './staff.json';
@@ -37,6 +38,7 @@ export const en = {
   prescription,
   protocol,
   public: publicWords,
+  review,
   session,
   site,
   staff,
