@@ -4,6 +4,8 @@
 import { and, asc, eq, gt, isNotNull, isNull, lte, or } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { lockout } from '@/db/schema/session';
+import { voidLivePermit } from './permit';
+import { openItem, type NewItem } from './worklist';
 
 export type LockoutLevel = 'safety' | 'review' | 'device' | 'hold';
 
@@ -21,6 +23,18 @@ export interface NewLockout {
 
 export async function insertLockout(db: Db, row: NewLockout): Promise<void> {
   await db.insert(lockout).values(row);
+}
+
+/** What findings lead to, in one go: lockouts, rows of the worklist, and the end of a live permit. */
+export async function storeConsequences(
+  db: Db,
+  found: { lockouts: readonly NewLockout[]; items: readonly NewItem[]; endsPermit: boolean },
+  participantId: string,
+  at: string,
+): Promise<void> {
+  if (found.lockouts.length > 0) await db.insert(lockout).values([...found.lockouts]);
+  for (const item of found.items) await openItem(db, item);
+  if (found.endsPermit) await voidLivePermit(db, participantId, at, 'lockout');
 }
 
 export interface OpenLockout {

@@ -115,13 +115,41 @@ export function consequencesOf(
 }
 
 export type PageContact = { readonly name: string; readonly email: string };
+export type Page = {
+  readonly kind: 'page';
+  readonly toEmail: string;
+  readonly language: string;
+  readonly facts: { readonly name: string; readonly siteName: string; readonly code: string; readonly path: string };
+  readonly key: string;
+  readonly urgent: true;
+};
 
-/** Whom a page goes to at a step, round and round the protocol's list, and the key that keeps it to one mail a step. */
+/**
+ * The page of a step: round and round the protocol's list, one mail a row and step. It names nothing but the site and the participant's
+ * code; null without contacts.
+ */
 export function pageAt(
   contacts: readonly PageContact[],
-  itemId: string,
+  about: { readonly itemId: string; readonly siteName: string; readonly code: string },
   step: number,
-): { readonly contact: PageContact; readonly key: string } | null {
+): Page | null {
   const contact = contacts[step % Math.max(contacts.length, 1)];
-  return contact === undefined ? null : { contact, key: `page:${itemId}:${step}` };
+  if (contact === undefined) return null;
+  return {
+    kind: 'page',
+    toEmail: contact.email,
+    language: 'en',
+    facts: { name: contact.name, siteName: about.siteName, code: about.code, path: '/worklist' },
+    key: `page:${about.itemId}:${step}`,
+    urgent: true,
+  };
+}
+
+/** The first page of each row that is paged. */
+export function firstPages(
+  { paged }: Consequences,
+  contacts: readonly PageContact[],
+  site: { readonly siteName: string; readonly code: string },
+): Page[] {
+  return paged.flatMap(({ id }) => pageAt(contacts, { itemId: id, ...site }, 0) ?? []);
 }

@@ -5,6 +5,7 @@ import type { Db } from '@/db/client';
 import { plannedSession } from '@/db/schema/course';
 import { supply } from '@/db/schema/device';
 import { diary, lockout, permit, session } from '@/db/schema/session';
+import { findPlanned } from '../course-plan';
 
 /** The rules look 7 days back; sessions may be made well before they end. */
 const daysBack = sql.raw(`interval '9 days'`);
@@ -106,4 +107,18 @@ export async function listSuppliesInUse(db: Db, participantId: string) {
     .from(supply)
     .where(and(eq(supply.participantId, participantId), isNull(supply.closedAt), isNotNull(supply.openedAt)))
     .orderBy(asc(supply.createdAt), asc(supply.id));
+}
+
+/** Which session of its course a planned one is, counted as on the strip; one that has left the strip keeps its place by its window. */
+export async function findNumber(
+  db: Db,
+  courseId: string,
+  plannedSessionId: string,
+): Promise<{ number: number; of: number }> {
+  const strip = await listPlannedOfCourse(db, courseId);
+  const place = strip.findIndex(({ id }) => id === plannedSessionId);
+  if (place >= 0) return { number: place + 1, of: strip.length };
+  const planned = await findPlanned(db, plannedSessionId);
+  const before = strip.filter(({ windowFrom }) => planned !== null && windowFrom < planned.windowFrom);
+  return { number: before.length + 1, of: strip.length };
 }

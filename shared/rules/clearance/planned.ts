@@ -4,6 +4,7 @@
 import { reasonCodes } from '@/shared/values/codes';
 import { parseInstant } from '@/shared/values/zone';
 import type { ClearanceAnswer } from '../clearance';
+import type { ClearanceFacts } from './facts';
 import { reason, type Reason } from './reason';
 
 export type PlannedFact = {
@@ -66,4 +67,9 @@ export function isStartStep({ code, fact, resolvedBy }: Reason): boolean {
 /** The battery is asked only when the device is at hand; until then it is not a reason but a step to come. */
 export function isNotAskedYet({ code, fact }: Pick<Reason, 'code' | 'fact'>): boolean {
   return code === 'unknown_fact' && fact === 'device.battery_pct';
+}
+
+/** The device that the phone has found is the person's own, or it is as if there were none. */
+export function withDeviceAtHand(facts: ClearanceFacts, isOwn: boolean): ClearanceFacts {
+  return isOwn ? facts : { ...facts, device: { isAssigned: false } };
 }

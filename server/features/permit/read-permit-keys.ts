@@ -1,0 +1,14 @@
+// The public keys that permits are signed with, for setting up a stimulator. Nobody's record.
+
+import { listSigningKeys } from '@/db/queries/permit';
+import { action } from '@/server/action';
+import { ensureSigningKey } from '@/server/features/permit/signing-key';
+import { readPermitKeys as contract } from '@/shared/contracts/permit';
+
+export const readPermitKeys = action(contract, async (_input, tx) => {
+  await ensureSigningKey(tx);
+  const keys = await listSigningKeys(tx.db);
+  return {
+    keys: keys.map(({ kid, publicX }) => ({ kty: 'OKP', crv: 'Ed25519', x: publicX, kid, alg: 'EdDSA', use: 'sig' }) as const),
+  };
+});

@@ -1,0 +1,15 @@
+// The signature on a permit: a compact JWS (RFC 7515) by Ed25519 (RFC 8037), which the stimulator checks itself.
+
+import { CompactSign, importJWK } from 'jose';
+import type { Tx } from '@/server/action';
+import { ensureSigningKey } from '@/server/features/permit/signing-key';
+import type { PermitClaims } from '@/shared/contracts/permit';
+
+export async function signPermit(tx: Pick<Tx, 'db' | 'now' | 'vault'>, claims: PermitClaims): Promise<string> {
+  const { kid, publicX, sealedPrivate } = await ensureSigningKey(tx);
+  const d = Buffer.from(tx.vault.open(sealedPrivate)).toString('base64url');
+  const key = await importJWK({ kty: 'OKP', crv: 'Ed25519', x: publicX, d }, 'EdDSA');
+  return new CompactSign(new TextEncoder().encode(JSON.stringify(claims)))
+    .setProtectedHeader({ alg: 'EdDSA', kid, typ: 'JWT' })
+    .sign(key);
+}
