@@ -3,7 +3,7 @@
 import { and, asc, desc, eq, gt, inArray, isNull, or, sql, type SQL } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { participant } from '@/db/schema/participant';
-import { diary, lockout, session, worklistItem } from '@/db/schema/session';
+import { diary, lockout, permit, session, worklistItem } from '@/db/schema/session';
 import { site, siteCounter } from '@/db/schema/site';
 import type { ParticipantRecord } from './reach';
 
@@ -149,26 +149,45 @@ export async function listParticipants(
     .limit(want.limit);
 }
 
-export interface LastDiary {
-  participantId: string;
+/**
+ * What a stored diary says was felt, as rows `felt(kind, strength)`; the headache asked for by itself is one of them. `d` is the diary.
+ */
+export const feltRows = sql.raw(`lateral (
+  select f ->> 'kind' as kind, max((f ->> 'strength')::int) as strength
+  from jsonb_array_elements((d.answers -> 'effects') || jsonb_build_array(
+    jsonb_build_object('kind', 'headache', 'strength', d.answers -> 'headacheAfter'))) f
+  where (f ->> 'strength')::int > 0 group by f ->> 'kind') felt`);
+
+export interface LastEffect {
+  kind: string;
+  strength: number;
   at: string;
-  /** As stored. */
-  answers: unknown;
 }
 
-/** The newest diary after a session of each person. */
-export async function listLastDiaries(db: Db, participantIds: readonly string[]): Promise<Map<string, LastDiary>> {
+/** The strongest effect in the newest diary of each person; left out where that one says that nothing was felt. */
+export async function listLastEffects(db: Db, participantIds: readonly string[]): Promise<Map<string, LastEffect>> {
   if (participantIds.length === 0) return new Map();
-  const rows = await db
+  const newest = db
     .selectDistinctOn([diary.participantId], {
       participantId: diary.participantId,
-      at: diary.writtenAt,
+      writtenAt: diary.writtenAt,
       answers: diary.answers,
     })
     .from(diary)
     .where(and(inArray(diary.participantId, [...participantIds]), eq(diary.kind, 'after')))
-    .orderBy(diary.participantId, desc(diary.writtenAt), desc(diary.id));
-  return new Map(rows.map((row) => [row.participantId, row]));
+    .orderBy(diary.participantId, desc(diary.writtenAt), desc(diary.id))
+    .as('d');
+  const rows = await db
+    .selectDistinctOn([newest.participantId], {
+      participantId: newest.participantId,
+      at: newest.writtenAt,
+      kind: sql<string>`felt.kind`,
+      strength: sql<number>`felt.strength`,
+    })
+    .from(newest)
+    .innerJoin(feltRows, sql`true`)
+    .orderBy(newest.participantId, sql`felt.strength desc, felt.kind`);
+  return new Map(rows.map(({ participantId, ...effect }) => [participantId, effect]));
 }
 
 /** Open lockouts of one person with the row of the worklist that waits for them, newest first. */
@@ -205,31 +224,35 @@ export interface TrendRow {
   /** Worst of the diary's pages. */
   headache: number | null;
   worstEffect: number | null;
-  /** As stored: answers of the diary after the session, and what the record's end computed. */
-  answers: unknown;
-  summary: unknown;
+  /** The diary's own word for the skin. */
+  skin: string | null;
   deliveredUc: number | null;
   plannedUc: number;
+  worstContactKiloohm: number | null;
 }
 
-/** Sessions that began, oldest first, with what was felt. */
+/** Sessions that began, oldest first, with what was felt and measured. */
 export async function listTrends(db: Db, participantId: string): Promise<TrendRow[]> {
   const worst = (column: 'headache' | 'worst_strength') =>
-    sql<number | null>`(select max(d.${sql.raw(column)}) from ${diary} d where d.session_id = "session"."id")`;
+    sql<number | null>`(select max(d.${sql.raw(column)}) from ${diary} d where d.session_id = ${session.id})`;
   return db
     .select({
-      sessionId: sql<string>`"session"."id"`,
+      sessionId: session.id,
       courseId: session.courseId,
       plannedSessionId: session.plannedSessionId,
-      at: sql<string>`"session"."started_at"`.mapWith(session.startedAt),
+      at: sql<string>`${session.startedAt}`.mapWith(session.startedAt),
       headache: worst('headache'),
       worstEffect: worst('worst_strength'),
-      answers: sql<unknown>`(select d.answers from ${diary} d where d.session_id = "session"."id" and d.kind = 'after')`,
-      summary: session.summary,
+      skin: sql<
+        string | null
+      >`(select d.answers ->> 'skin' from ${diary} d where d.session_id = ${session.id} and d.kind = 'after')`,
       deliveredUc: session.deliveredUc,
-      plannedUc: sql<number>`(select p.charge_uc from permit p where p.id = "session"."permit_id")`.mapWith(Number),
+      plannedUc: permit.chargeUc,
+      worstContactKiloohm: sql<number | null>`(select max((c ->> 'worstKiloohm')::float8)
+        from jsonb_array_elements(${session.summary} -> 'contact') c)`,
     })
     .from(session)
+    .innerJoin(permit, eq(permit.id, session.permitId))
     .where(
       and(
         eq(session.participantId, participantId),
