@@ -6,8 +6,16 @@ import path from 'node:path';
 import { promisify } from 'node:util';
 import { brotliCompress, constants, gzip } from 'node:zlib';
 
-// The chunk of a route is asked for only after the entry has run. These are needed on nearly every first visit.
-const firstChunks = /^(_layout|index|today|sign-in)-[0-9a-f]+\.js$/;
+// The chunk of a route is asked for only after the entry has run. These are needed on nearly every first visit: by somebody
+// who signs in, and by a participant who opens the page again.
+const firstRoutes = [
+  './_layout.tsx',
+  './index.tsx',
+  './(public)/_layout.tsx',
+  './(public)/sign-in.tsx',
+  './(participant)/_layout.tsx',
+  './(participant)/today.tsx',
+];
 const worthCompressing = /\.(js|css|html|json|svg|ttf|txt|webmanifest)$/;
 const neverServed = /(\.map|\.br|\.gz|^\/metadata\.json|^\/sw\.js)$/;
 
@@ -18,11 +26,31 @@ function list(folder) {
     .sort();
 }
 
+/**
+ * Address of each route's chunk. Chunks are named by file name alone, so three of them are called `_layout`; which is which
+ * stands in the entry: a table of routes (`"./today.tsx":{…(d[7],d.paths)}`), then what d holds (`{"7":812,…,"paths":{"812":"/…"}}`).
+ */
+function chunksOfRoutes(entry) {
+  const chunks = new Map();
+  const routes = [...entry.matchAll(/"(\.\/[^"]+)":\{enumerable:!0,get:\(\)=>r\(d\[\d+\]\)\(d\[(\d+)\],d\.paths\)/g)];
+  if (routes.length === 0) return chunks;
+  const after = entry.slice(routes.at(-1).index);
+  const table = after.match(/\{"0":\d+(?:,"\d+":\d+)*,"paths":\{[^}]*\}\}/);
+  if (!table) return chunks;
+  const { paths, ...modules } = JSON.parse(table[0]);
+  for (const [, route, number] of routes) chunks.set(route, paths[modules[number]]);
+  return chunks;
+}
+
 function addPreloads(folder) {
   const page = path.join(folder, 'index.html');
-  const links = list(folder)
-    .filter((file) => firstChunks.test(path.basename(file)))
-    .map((file) => `<link rel="preload" as="script" href="/${path.relative(folder, file)}">`);
+  const entry = list(folder).find((file) => /entry-[0-9a-f]+\.js$/.test(file));
+  const chunks = chunksOfRoutes(readFileSync(entry, 'utf8'));
+  const links = [...new Set(firstRoutes.map((route) => chunks.get(route)).filter(Boolean))].map(
+    (address) => `<link rel="preload" as="script" href="${address}">`,
+  );
+  // Without them the pages work and come a round trip later; but then the bundler's output has changed and this must follow.
+  if (links.length === 0) console.warn('Pages: no chunk of a first route was found; nothing is loaded ahead.');
   writeFileSync(page, readFileSync(page, 'utf8').replace('</head>', `${links.join('')}</head>`));
 }
 

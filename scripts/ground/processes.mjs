@@ -3,6 +3,7 @@
 import { spawn } from 'node:child_process';
 import { readFileSync } from 'node:fs';
 import { createServer } from 'node:net';
+import { setTimeout as pause } from 'node:timers/promises';
 
 /** A failure whose text is meant for the person at the terminal: shown as it is, without a stack. */
 export class Plainly extends Error {}
@@ -102,6 +103,8 @@ export async function main(work, { whenAskedToStop = 0 } = {}) {
   try {
     await work();
   } catch (error) {
+    // Ctrl-C reaches our children too, and what they die of may arrive here before our own signal does.
+    await pause(100);
     if (stopping) return;
     console.error(error instanceof Plainly ? error.message : error);
     await end(1);
