@@ -21,7 +21,7 @@ export interface DialogProps {
   busy?: boolean;
 }
 
-/** Takes the focus to the first field, or to the title where there is none, once the dialog stands. */
+/** Takes the focus to the first field, or to the title where there is none; gives it back to where it was at the end. */
 function DialogBody({ title, titleId, onClose, children, actions, busy }: DialogProps & { titleId: string }) {
   const { t } = useTranslation('common');
   const { touch } = useTheme();
@@ -29,8 +29,12 @@ function DialogBody({ title, titleId, onClose, children, actions, busy }: Dialog
   useEffect(() => {
     const node: unknown = body.current;
     if (typeof HTMLElement === 'undefined' || !(node instanceof HTMLElement)) return;
+    const before = document.activeElement;
     const target = node.querySelector<HTMLElement>('input, select, textarea, [role="radio"][tabindex="0"]');
     (target ?? node.querySelector<HTMLElement>('[role="heading"], h2'))?.focus();
+    return () => {
+      if (before instanceof HTMLElement && before.isConnected) before.focus();
+    };
   }, []);
   return (
     <View ref={body} style={{ flexShrink: 1, minHeight: 0 }}>
@@ -122,7 +126,7 @@ export function Dialog(props: DialogProps) {
             boxShadow: `0 8px 32px ${colour.shadow}`,
           }}
         >
-          {open ? <DialogBody {...props} titleId={titleId} /> : null}
+          <DialogBody {...props} titleId={titleId} />
         </View>
       </View>
     </Modal>

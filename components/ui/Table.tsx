@@ -144,13 +144,9 @@ export function Table<Row>(props: TableProps<Row>) {
   const headerId = (columns.find((column) => column.isRowHeader) ?? columns[0])?.id;
   const rowPadding = spacing === 'close' ? space[1] + space.half : space[3];
 
-  const onKey = (event: KeyboardEvent, row: Row, index: number) => {
+  const onKey = (event: KeyboardEvent, index: number) => {
     // Keys meant for a button or link inside the row are theirs.
     if (event.target !== event.currentTarget) return;
-    if (event.key === 'Enter' && onPressRow) {
-      event.preventDefault();
-      return onPressRow(row);
-    }
     if (event.key === 'ArrowLeft' || event.key === 'ArrowRight') return;
     const next = roving.next(event, index, rows.length);
     if (next === null) return;
@@ -256,7 +252,7 @@ export function Table<Row>(props: TableProps<Row>) {
               tabIndex={index === Math.min(focusIndex, rows.length - 1) ? 0 : -1}
               onFocus={() => setFocusIndex(index)}
               onPress={() => onPressRow(row)}
-              onKeyDown={(event) => onKey(event, row, index)}
+              onKeyDown={(event) => onKey(event, index)}
               style={({ hovered }) => [style, hovered && !isActive ? { backgroundColor: colour.sunken } : null]}
             >
               {cells}
