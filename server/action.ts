@@ -51,7 +51,10 @@ export interface OutboxMessage {
   kind: OutboxKind;
   toEmail: string;
   language: string;
-  /** Names, ids, links' paths (`/invitation#token=…`); never a treatment, dose or condition. */
+  /**
+   * Names and ids; `path` is where the mail's button leads (`/invitation#token=…`), `stopPath` where "stop these mails" does.
+   * Never a treatment, dose or condition.
+   */
   facts: Readonly<Record<string, string | number | boolean | null>>;
   /** One mail for one matter: the same key is kept once. */
   key: string;

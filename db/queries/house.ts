@@ -48,10 +48,11 @@ export async function claimOutbox(db: Db, now: string, heldUntil: string, limit:
   return rows.sort((a, b) => Number(b.urgent) - Number(a.urgent) || a.createdAt.localeCompare(b.createdAt));
 }
 
+/** Closes a row for good and forgets its links: they carry tokens, and the mail alone may have those. */
 export async function closeOutbox(db: Db, id: string, at: string, why: 'sent' | 'dropped' | 'refused'): Promise<void> {
   await db
     .update(outbox)
-    .set({ closedAt: at, closedWhy: why })
+    .set({ closedAt: at, closedWhy: why, facts: sql`${outbox.facts} - 'path' - 'stopPath'` })
     .where(and(eq(outbox.id, id), isNull(outbox.closedAt)));
 }
 
@@ -62,7 +63,7 @@ export async function postponeOutbox(db: Db, id: string, dueAt: string, error: s
     .where(and(eq(outbox.id, id), isNull(outbox.closedAt)));
 }
 
-/** When the next mail is due after `now`; null when none waits. */
+/** When the next mail is due; null when none waits. */
 export async function nextOutboxDue(db: Db): Promise<string | null> {
   const [row] = await db
     .select({ at: min(outbox.dueAt) })

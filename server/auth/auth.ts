@@ -96,7 +96,7 @@ async function tellReset(transact: Transact, userId: string, token: string): Pro
       kind: 'password_reset',
       toEmail: account.email,
       language: account.language,
-      facts: { name: account.name, link: `/reset-password#token=${token}` },
+      facts: { name: account.name, path: `/reset-password#token=${token}` },
       key: `password_reset:${userId}:${token.slice(0, 8)}`,
       urgent: true,
     });

@@ -42,7 +42,10 @@ export function pages(folder: string): Router {
     if (!existsSync(shell)) return next();
     request.url = '/index.html';
     if (!sendCompressed(folder, request, response))
-      response.setHeader('Cache-Control', 'no-cache').type('html').sendFile('index.html', { root: folder, cacheControl: false });
+      response
+        .setHeader('Cache-Control', 'no-cache')
+        .type('html')
+        .sendFile('index.html', { root: folder, cacheControl: false });
   });
   return router;
 }

@@ -34,8 +34,8 @@ export function problemOf({ status, code, facts, fields, reasons }: BareProblem,
 }
 
 function fieldProblem({ path, code, facts }: BareField): FieldProblem {
-  const key = `errors:field.${code}`;
-  return { path, code, message: sentence(hasWords(key) ? key : 'errors:field.other', facts) };
+  const key = [`errors:field.${code}`, `errors:code.${code}`].find(hasWords) ?? 'errors:field.other';
+  return { path, code, message: sentence(key, facts) };
 }
 
 export function sendProblem(request: Request, response: Response, problem: BareProblem): void {
