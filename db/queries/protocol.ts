@@ -110,3 +110,8 @@ export async function insertProtocol(
   const [made] = await db.insert(protocol).values(row).onConflictDoNothing().returning({ id: protocol.id });
   return made ?? null;
 }
+
+/** Of two who sign a site's protocol at once the second waits, and then sees the first one's version; released at commit. */
+export async function lockProtocol(db: Db, siteId: string): Promise<void> {
+  await db.execute(sql`select pg_advisory_xact_lock(hashtext('rampwell.protocol'), hashtext(${siteId}))`);
+}

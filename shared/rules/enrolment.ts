@@ -14,6 +14,13 @@ export function enrolmentRefusal(person: { bornOn: string; zone: string }, now: 
   return age < ceilings.leastAgeYears.value ? 'participant.too_young' : null;
 }
 
+/** Digits of a person's number within the site: LS-0142. More people than that make the code longer, not wrong. Own choice. */
+const codeDigits = 4;
+
+export function participantCode(siteCode: string, number: number): string {
+  return `${siteCode}-${String(number).padStart(codeDigits, '0')}`;
+}
+
 /** Everything that a person must have understood and agreed to; photos are a choice of their own. */
 const neededAnswers = [
   'understandsPurpose',

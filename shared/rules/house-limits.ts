@@ -42,3 +42,12 @@ export const quietHours = { from: '21:00', to: '08:00' } as const;
 
 /** A nudge about a missed session is stale after this. Own choice. */
 export const nudgeLifeHours = 24;
+
+/** Two sessions running that ended by lost contact hold the device (safety rules §7). */
+export const lostContactLooksBack = 2;
+
+/** People whose state is judged in one go while a list looks for one state: few statements, little memory. Own choice. */
+export const peopleJudgedAtOnce = 200;
+
+/** Rows of an export that are read in one go: each slice is turned into text before the next one is read. Own choice. */
+export const exportSliceRows = 1000;

@@ -25,3 +25,15 @@ export function positionOf(values: readonly unknown[] | null): ListPosition | un
   const [at, id] = values;
   return isInstant(at) && isUuid(id) ? { at, id } : undefined;
 }
+
+export interface TextPosition {
+  text: string;
+  id: string;
+}
+
+/** The position of a name, code or label and an id; undefined for whatever this list did not make. */
+export function textPositionOf(values: readonly unknown[] | null): TextPosition | undefined {
+  if (values === null || values.length !== 2) return undefined;
+  const [text, id] = values;
+  return typeof text === 'string' && isUuid(id) ? { text, id } : undefined;
+}
