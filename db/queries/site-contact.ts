@@ -46,6 +46,17 @@ export async function findContactOfParticipant(
   return row ?? null;
 }
 
+/** What a page may name: the site and the participant's code. */
+export async function findPageFacts(db: Db, participantId: string): Promise<{ siteName: string; code: string } | null> {
+  const [row] = await db
+    .select({ siteName: site.name, code: participant.code })
+    .from(participant)
+    .innerJoin(site, eq(site.id, participant.siteId))
+    .where(eq(participant.id, participantId))
+    .limit(1);
+  return row ?? null;
+}
+
 /** The site of each participant; those that do not exist are left out. */
 export async function listSitesOfParticipants(db: Db, participantIds: readonly string[]): Promise<Map<string, string>> {
   if (participantIds.length === 0) return new Map();

@@ -1,6 +1,7 @@
 // The permit, and the session's events that come in under it.
 
 import { z } from 'zod';
+import { redFlags } from '@/shared/values/codes';
 import { Instant, Uuid } from '@/shared/values/primitives';
 import { contract } from './contract';
 import { DoseView } from './course';
@@ -193,7 +194,7 @@ export const SessionEvent = z.discriminatedUnion('kind', [
     sensation: z.string().max(40),
     strength: z.number().int().min(0).max(10),
   }),
-  z.strictObject({ ...at, kind: z.literal('red_flag'), flag: z.string().max(40) }),
+  z.strictObject({ ...at, kind: z.literal('red_flag'), flag: z.enum(redFlags) }),
   z.strictObject({
     ...at,
     kind: z.literal('ended'),
@@ -220,11 +221,7 @@ export const sendEvents = contract({
     stored: z.array(Uuid),
     known: z.array(Uuid),
     refused: z.array(
-      z.strictObject({
-        id: Uuid,
-        code: z.enum(['other_content', 'from_the_future', 'sequence_taken', 'after_the_end', 'too_late']),
-        message: z.string(),
-      }),
+      z.strictObject({ id: Uuid, code: z.enum(['other_content', 'from_the_future', 'sequence_taken', 'after_the_end', 'too_late']) }),
     ),
     sessionId: Uuid,
     sessionState: z.enum(['permitted', 'running', 'awaiting_record', 'closed', 'void']),
@@ -237,7 +234,6 @@ export const sendEvents = contract({
       rampDown: z.boolean(),
     }),
   }),
-  refusals: ['events.none_accepted'],
   touches: ['session', 'clearance', 'course'],
   about: 'A batch of the session’s events, any order, any delay, each kept once. Idempotent by event id.',
   example: {

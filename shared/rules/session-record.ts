@@ -2,7 +2,7 @@
 // event is kept once, in any order of arrival, at any delay; a gap stays a gap.
 
 import { isAbove } from '@/shared/values/units';
-import { parseInstant } from '@/shared/values/zone';
+import { isoOf, parseInstant } from '@/shared/values/zone';
 import { eventAheadSeconds, mostMissingTold, recordGraceSeconds } from './house-limits';
 import type { PermitWord } from './permit-state';
 import { mostPauseSeconds } from './session/run';
@@ -65,6 +65,11 @@ export function missingSequences(kept: readonly { readonly sequence: number }[],
   return missing;
 }
 
+/** Seconds from one instant to another. */
+export function secondsSince(earlier: string, later: string): number {
+  return ((parseInstant(later) ?? Number.NaN) - (parseInstant(earlier) ?? Number.NaN)) / 1000;
+}
+
 /**
  * When the ramp up began: not after the permit's end (no device starts on a permit that is over), not so late that the latest second told
  * of would lie ahead, not before the issue. Of what is possible the latest, so that a gap is never counted too long.
@@ -73,11 +78,17 @@ export function startedAtOf(
   permit: { readonly issuedAt: string; readonly expiresAt: string },
   latestSeconds: number,
   now: string,
-): number {
+): string {
   const issued = parseInstant(permit.issuedAt) ?? Number.NaN;
   const over = parseInstant(permit.expiresAt) ?? Number.NaN;
   const told = (parseInstant(now) ?? Number.NaN) - latestSeconds * 1000;
-  return Math.max(issued, Math.min(over, told));
+  return isoOf(Math.max(issued, Math.min(over, told)));
+}
+
+/** When it ended; never ahead of the server's clock, whatever the network took. */
+export function endedAtOf(startedAt: string, endSeconds: number, now: string): string {
+  const started = parseInstant(startedAt) ?? Number.NaN;
+  return isoOf(Math.min(parseInstant(now) ?? Number.NaN, started + Math.round(endSeconds * 1000)));
 }
 
 export type SessionWord = 'permitted' | 'running' | 'awaiting_record' | 'closed' | 'void';

@@ -62,6 +62,11 @@ export function tellsOfCurrent(event: RecordedEvent): boolean {
   return event.kind === 'started' || event.kind === 'samples' || (event.kind === 'ended' && (event.onSeconds ?? 0) > 0);
 }
 
+/** Time with current on of the dose as permitted. */
+export function plannedSecondsOf(dose: Omit<TrapezoidFacts, 'intensityMilliamp'>): number {
+  return dose.rampUpSeconds + dose.holdSeconds + dose.rampDownSeconds;
+}
+
 /** The latest second that an event tells of. */
 export function latestSecondsOf(event: RecordedEvent): number {
   return (event.samples ?? []).reduce((latest, [seconds]) => Math.max(latest, seconds), event.atSeconds);

@@ -1,0 +1,97 @@
+// A batch of a session's events: each kept once, in any order, at any delay. What the run shows acts at once; when nothing is missing any
+// more, the session is closed with what was truly delivered.
+
+import { findOpenPause, lockCourse } from '@/db/queries/course-state';
+import { listOpenLockouts } from '@/db/queries/lockout';
+import { findPrescriptionInForce } from '@/db/queries/prescription';
+import { findSessionOfPermit, insertEvents, listEventBodies, listKeptEvents, type SessionRecord } from '@/db/queries/session';
+import { action, invalid, notFound, type Tx } from '@/server/action';
+import { beginSession } from '@/server/features/session/begin-session';
+import { closeRecord } from '@/server/features/session/close-record';
+import { eventsOf, incomingOf, rowOf } from '@/server/features/session/event-row';
+import { flagRecord } from '@/server/features/session/flag-record';
+import { storeRunFindings } from '@/server/features/session/store-run-findings';
+import { sendEvents as contract, type SessionEvent } from '@/shared/contracts/permit';
+import { permitState } from '@/shared/rules/permit';
+import { permitStateAt } from '@/shared/rules/permit-state';
+import { judgeEvents, missingSequences, secondsSince, sessionWordOf, type EventVerdict } from '@/shared/rules/session-record';
+import { plannedSecondsOf } from '@/shared/rules/session-summary';
+
+function lastSequenceOf(events: readonly SessionEvent[]): number | null {
+  const ended = events.find((event) => event.kind === 'ended');
+  return ended?.kind === 'ended' ? ended.lastSequence : null;
+}
+
+/** Changed, paused or locked since the permit was given: whatever runs on it ramps down. */
+async function isRevoked(tx: Tx, session: SessionRecord, now: string): Promise<boolean> {
+  const { permit, courseId, participantId } = session;
+  const present = {
+    // Nothing in force is as good as another version.
+    prescriptionVersion: (await findPrescriptionInForce(tx.db, courseId))?.version ?? 0,
+    isPaused: (await findOpenPause(tx.db, courseId)) !== null,
+    isLocked: (await listOpenLockouts(tx.db, participantId, now)).length > 0,
+  };
+  return permitState(permit, present, now).reasons.includes('permit_revoked');
+}
+
+async function answerOf(tx: Tx, session: SessionRecord, verdicts: readonly EventVerdict[], now: string) {
+  const { state, voidedBy } = permitStateAt(session.permit, now);
+  const idsOf = (wanted: 'store' | 'known') => verdicts.flatMap(({ id, verdict }) => (verdict === wanted ? [id] : []));
+  const kept = await listKeptEvents(tx.db, session.id);
+  const end = lastSequenceOf(eventsOf(await listEventBodies(tx.db, session.id, { kinds: ['ended'] })));
+  const isOver = session.closedAt !== null || session.endedAt !== null;
+  return {
+    stored: idsOf('store'),
+    known: idsOf('known'),
+    refused: verdicts.flatMap((each) => (each.verdict === 'refused' ? [{ id: each.id, code: each.code }] : [])),
+    sessionId: session.id,
+    sessionState: sessionWordOf({ ...session, plannedSeconds: plannedSecondsOf(session.dose) }, state, now),
+    missing: missingSequences(kept, end),
+    permit: { state, voidedBy, rampDown: !isOver && (state === 'void' || (await isRevoked(tx, session, now))) },
+  };
+}
+
+export const sendEvents = action(contract, async ({ actor, params, body }, tx) => {
+  const found = await findSessionOfPermit(tx.db, params.permitId);
+  if (!found || found.participantId !== actor.participantId) return notFound();
+  await lockCourse(tx.db, found.courseId);
+  const now = await tx.now();
+  const session = (await findSessionOfPermit(tx.db, params.permitId)) ?? found;
+  const kept = await listKeptEvents(tx.db, session.id);
+  const end = lastSequenceOf(eventsOf(await listEventBodies(tx.db, session.id, { kinds: ['ended'] })));
+
+  const verdicts = judgeEvents(body.events.map(incomingOf), kept, secondsSince(session.permit.issuedAt, now), end);
+  const refusedAs = (id: string) => verdicts.find((each) => each.id === id && each.verdict === 'refused');
+  const isHopeless = verdicts.every((each) => each.verdict === 'refused' && (each.code === 'from_the_future' || each.code === 'after_the_end'));
+  if (isHopeless) {
+    return invalid(
+      body.events.flatMap((event, index) => {
+        const refused = refusedAs(event.id);
+        const path = `events.${index}.atSeconds`;
+        return refused?.verdict === 'refused' ? [{ path, code: `event_${refused.code}` }] : [];
+      }),
+    );
+  }
+
+  const accepted = body.events.filter((_event, index) => verdicts[index]?.verdict === 'store');
+  await insertEvents(tx.db, session.id, accepted.map((event) => rowOf(event, now)));
+  await storeRunFindings(tx, session, accepted, now);
+  await beginSession(tx, session, accepted, now);
+  await flagRecord(tx, session, verdicts, now);
+  const all = [...kept, ...accepted];
+  const endNow = end ?? lastSequenceOf(accepted);
+  const isWhole = endNow !== null && missingSequences(all, endNow).length === 0;
+  const closed = isWhole && session.closedAt === null ? await closeRecord(tx, session.id, now) : null;
+
+  const after = (await findSessionOfPermit(tx.db, params.permitId)) ?? session;
+  if (accepted.length > 0) {
+    const { participantId, siteId } = session;
+    tx.record({
+      participantId,
+      siteId,
+      subject: { kind: 'session', id: session.id },
+      after: { events: accepted.length, startedAt: after.startedAt, endReason: after.endReason, ...(closed ?? {}) },
+    });
+  }
+  return answerOf(tx, after, verdicts, now);
+});
