@@ -24,12 +24,14 @@ export function Root() {
       new QueryClient({
         defaultOptions: {
           queries: {
+            // Asked whatever the browser thinks of the network: no answer is an answer that a page can show.
+            networkMode: 'always',
             staleTime: freshMs,
             gcTime: keptMs,
             retry: (count, error) =>
               error instanceof ApiProblem && (error.offline || error.problem.status >= 500) && count < tries,
           },
-          mutations: { retry: false },
+          mutations: { retry: false, networkMode: 'always' },
         },
       }),
   );

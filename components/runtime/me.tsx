@@ -5,6 +5,7 @@ import { useCallback } from 'react';
 import { readMe, type Me } from '@/shared/contracts/account';
 import type { Role } from '@/shared/values/roles';
 import { useRead } from './api';
+import { keepMe, useKeptMe } from './kept-me';
 
 /** First page of each role. */
 const firstPages: Readonly<Record<Role, '/today' | '/shared' | '/worklist' | '/site'>> = {
@@ -30,8 +31,10 @@ export type MeState =
 /** What is known of the person at this browser. */
 export function useMeState(): MeState {
   const read = useRead(readMe);
+  const kept = useKeptMe(!read.data && (read.failureReason?.offline ?? false));
   if (read.data) return { state: 'signed_in', me: read.data };
-  if (read.isPending) return { state: 'loading' };
+  if (kept) return { state: 'signed_in', me: kept };
+  if (read.isPending || kept === undefined) return { state: 'loading' };
   const code = read.error?.problem.code;
   if (code === 'not_signed_in') return { state: 'signed_out' };
   if (code === 'second_factor.required') return { state: 'second_factor' };
@@ -49,6 +52,7 @@ export function useSignOut(): () => Promise<void> {
   const queries = useQueryClient();
   return useCallback(async () => {
     await fetch('/api/auth/sign-out', { method: 'POST', credentials: 'same-origin', headers: { 'content-type': 'application/json' }, body: '{}' });
+    await keepMe(null);
     queries.clear();
   }, [queries]);
 }
