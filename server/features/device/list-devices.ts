@@ -1,0 +1,20 @@
+// Stimulators of own sites, by label.
+
+import { cutPage, decodeCursor } from '@/db/queries/cursor';
+import { listDevices as listRecords } from '@/db/queries/device';
+import { action, invalid } from '@/server/action';
+import { viewDevice } from '@/server/features/device/view-device';
+import { listDevices as contract } from '@/shared/contracts/device';
+import { textPositionOf } from '@/shared/values/list-position';
+
+export const listDevices = action(contract, async ({ actor, query }, tx) => {
+  const after = query.cursor === undefined ? null : textPositionOf(decodeCursor(query.cursor));
+  if (after === undefined) return invalid([{ path: 'cursor', code: 'cursor_unknown' }]);
+  const rows = await listRecords(tx.db, actor.siteIds, {
+    state: query.state,
+    limit: query.limit + 1,
+    after: after && { label: after.text, id: after.id },
+  });
+  const { page, nextCursor } = cutPage(rows, query.limit, ({ label, id }) => [label, id]);
+  return { items: page.map((device) => viewDevice(device, actor.role)), nextCursor };
+});
