@@ -103,11 +103,11 @@ export async function findSessionOfPermit(db: Db, permitId: string): Promise<Ses
 export async function listBegunSessions(
   db: Db,
   participantId: string,
-  page: { limit: number; after: { startedAt: string; id: string } | null },
+  page: { limit: number; after: { at: string; id: string } | null },
 ): Promise<SessionRecord[]> {
   const after =
     page.after &&
-    or(lt(session.startedAt, page.after.startedAt), and(eq(session.startedAt, page.after.startedAt), lt(session.id, page.after.id)));
+    or(lt(session.startedAt, page.after.at), and(eq(session.startedAt, page.after.at), lt(session.id, page.after.id)));
   const rows = await selectSessions(db)
     .where(and(eq(session.participantId, participantId), sql`${session.startedAt} is not null and ${session.closedWhy} is distinct from 'unused'`, after ?? undefined))
     .orderBy(desc(session.startedAt), desc(session.id))

@@ -35,7 +35,7 @@ export const recordGraceSeconds = 120;
 export const nextDayAskedDays = 3;
 
 /** Skin photos: enough of one session, sharp enough to see redness, small enough for a phone's network. Own choices. */
-export const photoLimits = { mostPerSession: 5, mostPixels: 40_000_000, longestSidePixels: 1600, mostBytes: 8_000_000, jpegQuality: 82 } as const;
+export const photoLimits = { mostPerSession: 5, mostPixels: 40_000_000, longestSidePixels: 1600, mostBytes: 8_000_000, jpegQuality: 82, signatureBytes: 12 } as const;
 
 /** Notices to a person wait for the morning between these local hours (guidance R70). */
 export const quietHours = { from: '21:00', to: '08:00' } as const;
@@ -51,3 +51,6 @@ export const peopleJudgedAtOnce = 200;
 
 /** Rows of an export that are read in one go: each slice is turned into text before the next one is read. Own choice. */
 export const exportSliceRows = 1000;
+
+/** Earlier reports that the diary rules look at: moderate in 3 of 5 asks for most (safety rules §7). */
+export const reportsLookBack = 5;

@@ -116,3 +116,11 @@ export function sessionWordOf(
   const isOver = (parseInstant(now) ?? Number.POSITIVE_INFINITY) >= startedAt + longest * 1000;
   return session.endedAt !== null || isOver ? 'awaiting_record' : 'running';
 }
+
+/** When the next session may be: the later of the gap's end and the next window's start; null when nothing is planned. */
+export function nextFromOf(endedAt: string | null, minGapMs: number, nextWindowFrom: string | null): string | null {
+  const opens = parseInstant(nextWindowFrom);
+  if (opens === undefined) return null;
+  const ended = parseInstant(endedAt);
+  return isoOf(ended === undefined ? opens : Math.max(opens, ended + minGapMs));
+}

@@ -122,3 +122,22 @@ export async function findNumber(
   const before = strip.filter(({ windowFrom }) => planned !== null && windowFrom < planned.windowFrom);
   return { number: before.length + 1, of: strip.length };
 }
+
+/** Start of the next window in which nothing was begun yet; null when nothing is planned. */
+export async function findNextWindow(db: Db, courseId: string, now: string): Promise<string | null> {
+  const [row] = await db
+    .select({ windowFrom: plannedSession.windowFrom })
+    .from(plannedSession)
+    .where(
+      and(
+        eq(plannedSession.courseId, courseId),
+        isNull(plannedSession.closedAt),
+        gt(plannedSession.windowTo, now),
+        sql`not exists (select 1 from ${session} s where s.planned_session_id = ${plannedSession.id} and s.started_at is not null
+          and s.closed_at is null)`,
+      ),
+    )
+    .orderBy(asc(plannedSession.windowFrom))
+    .limit(1);
+  return row?.windowFrom ?? null;
+}

@@ -7,7 +7,7 @@ import { listLockoutsFrom, listOpenLockouts, storeConsequences } from '@/db/quer
 import { closeSession, findSession, listEndReasons, listEventBodies, type SessionRecord } from '@/db/queries/session';
 import { closeMatter } from '@/db/queries/worklist';
 import type { Tx } from '@/server/action';
-import { endCourseIfDone } from '@/server/features/session/end-course';
+import { closeCourseIfDone } from '@/server/course-end';
 import { eventsOf } from '@/server/features/session/event-row';
 import { tellPages } from '@/server/features/session/tell-pages';
 import { consequencesOf } from '@/shared/rules/consequences';
@@ -27,7 +27,7 @@ export async function closeRecord(tx: Tx, sessionId: string, now: string) {
   if (amounts.hasRun) {
     if (row.completeness !== 'not_delivered') {
       await closePlanned(tx.db, session.plannedSessionId, now, 'done');
-      await endCourseIfDone(tx.db, session.courseId, now);
+      await closeCourseIfDone(tx.db, session.courseId, now);
     }
     await storeRecordFindings(tx, session, { endReason: amounts.endReason, completeness: row.completeness, summary }, now);
   }
