@@ -31,6 +31,13 @@ export async function lockParticipantInReach(db: Db, actor: Reacher, participant
   return row ?? null;
 }
 
+/** The asker's own row, locked against simultaneous change; null for whoever is no participant. */
+export async function lockOwnParticipant(db: Db, participantId: string | null): Promise<ParticipantRecord | null> {
+  if (participantId === null) return null;
+  const [row] = await db.select().from(participant).where(eq(participant.id, participantId)).for('update');
+  return row ?? null;
+}
+
 /** True when this caregiver account is linked to the participant and not removed. */
 export async function findCaregiverLink(db: Db, accountId: string, participantId: string) {
   const [row] = await db

@@ -41,7 +41,7 @@ export const inviteCaregiver = contract({
   body: z.strictObject({ name: PersonName, email: Email, shares: Shares }),
   answer: CaregiverView,
   status: 201,
-  refusals: ['caregiver.already_invited', 'caregiver.address_is_staff_or_participant', 'caregiver.too_many'],
+  refusals: ['caregiver.already_invited', 'caregiver.address_is_staff_or_participant', 'caregiver.too_many', 'participant.withdrawn'],
   touches: ['caregiver'],
   about: 'Invites a caregiver by mail.',
 });

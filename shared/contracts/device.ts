@@ -73,7 +73,7 @@ export const changeDeviceState = contract({
   params: z.strictObject({ deviceId: Uuid }),
   body: z.strictObject({ state: z.enum(['stock', 'quarantined', 'recalled', 'lost', 'retired']), reason: Line }),
   answer: DeviceView,
-  refusals: ['device.state_not_reachable'],
+  refusals: ['device.state_not_reachable', 'version.stale'],
   touches: ['device', 'participant', 'clearance', 'permit'],
   about: 'Takes a stimulator back, quarantines or recalls it. A live permit on it is void at once.',
 });
@@ -112,7 +112,7 @@ export const giveSupply = contract({
   body: z.strictObject({ kind: z.enum(['sponge', 'saline', 'insert']), lot: Line, openedOn: LocalDate }),
   answer: SupplyView,
   status: 201,
-  refusals: ['supply.opened_in_future'],
+  refusals: ['supply.opened_in_future', 'participant.withdrawn'],
   touches: ['supply', 'participant', 'clearance'],
   about: 'Gives supplies of one lot; the earlier ones of that kind end. Uses and days are the site’s defaults.',
 });

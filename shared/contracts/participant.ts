@@ -267,7 +267,7 @@ export const recordConsent = contract({
   }),
   answer: z.strictObject({ id: Uuid }),
   status: 201,
-  refusals: ['consent.not_given', 'consent.version_unknown', 'consent.signed_in_future'],
+  refusals: ['consent.not_given', 'consent.version_unknown', 'consent.signed_in_future', 'participant.withdrawn', 'protocol.none'],
   touches: ['participant', 'clearance'],
   about: 'Records a signed consent by its version.',
 });
@@ -290,7 +290,7 @@ export const recordScreening = contract({
   }),
   answer: z.strictObject({ id: Uuid, outcome: z.enum(['clear', 'excluded', 'incomplete']), validUntil: Instant }),
   status: 201,
-  refusals: ['screening.item_unknown', 'screening.reason_missing', 'screening.clinician_decides'],
+  refusals: ['screening.item_unknown', 'screening.reason_missing', 'screening.clinician_decides', 'participant.withdrawn', 'protocol.none'],
   touches: ['participant', 'clearance'],
   about: 'Records the screening form; the outcome is the rule’s. Going on over a relative item is a clinician’s.',
 });
@@ -312,7 +312,7 @@ export const recordTraining = contract({
   }),
   answer: z.strictObject({ id: Uuid, signedOff: z.boolean(), open: z.array(z.string()), validUntil: Instant.nullable() }),
   status: 201,
-  refusals: ['training.skill_unknown'],
+  refusals: ['training.skill_unknown', 'participant.withdrawn', 'protocol.none'],
   touches: ['participant', 'clearance'],
   about: 'Signs off the skills one by one; all of them make the sign-off.',
 });
@@ -334,7 +334,7 @@ export const recordWatchedSession = contract({
   }),
   answer: z.strictObject({ id: Uuid, watched: z.number().int(), required: z.number().int() }),
   status: 201,
-  refusals: ['training.tolerability_missing'],
+  refusals: ['training.tolerability_missing', 'participant.withdrawn', 'protocol.none'],
   touches: ['participant', 'clearance'],
   about: 'Records a watched session, or that somebody is watching now.',
 });

@@ -1,6 +1,13 @@
 // Takes a stimulator back, quarantines, recalls, loses or retires it. A live permit on it is void at once.
 
-import { closeAssignment, findDevice, findPersonWithPermitOn, insertDeviceState, lockDevice } from '@/db/queries/device';
+import { findActiveCourse, lockCourse } from '@/db/queries/course-state';
+import {
+  closeAssignment,
+  findDevice,
+  findPersonWithPermitOn,
+  insertDeviceState,
+  lockDevice,
+} from '@/db/queries/device';
 import { voidLivePermit } from '@/db/queries/permit';
 import { closeMatter } from '@/db/queries/worklist';
 import { action, notFound, refuse, type Tx } from '@/server/action';
@@ -9,10 +16,15 @@ import { changeDeviceState as contract } from '@/shared/contracts/device';
 import { deviceStateReachable, endsAssignment, voidsPermit } from '@/shared/rules/device-state';
 
 export const changeDeviceState = action(contract, async ({ actor, params, body }, tx) => {
+  const seen = await findDevice(tx.db, actor.siteIds, params.deviceId);
+  // Whoever asks for a permit holds the course: its lock comes first, so that no permit is issued on what was seen before.
+  const course = seen?.assignedTo && (await findActiveCourse(tx.db, seen.assignedTo.participantId));
+  if (course) await lockCourse(tx.db, course.id);
   const device = await lockDevice(tx.db, actor.siteIds, params.deviceId);
-  if (!device) return notFound();
+  if (!seen || !device) return notFound();
   const now = await tx.now();
   const { id, siteId, assignedTo } = device;
+  if (assignedTo?.participantId !== seen.assignedTo?.participantId) return refuse('version.stale', { siteId });
   if (!deviceStateReachable(device.state, body.state)) {
     const facts = { from: device.state, to: body.state };
     return refuse('device.state_not_reachable', { siteId, participantId: assignedTo?.participantId, facts });

@@ -29,7 +29,12 @@ export const readParticipant = action(contract, async ({ actor, params }, tx) =>
     code,
     name: isNamed ? participant.name : code,
     contact: isNamed
-      ? { email, phone, bornOn, emergencyContact: { name: participant.emergencyName, phone: participant.emergencyPhone } }
+      ? {
+          email,
+          phone,
+          bornOn,
+          emergencyContact: { name: participant.emergencyName, phone: participant.emergencyPhone },
+        }
       : null,
     siteId: site.id,
     siteName: site.name,

@@ -12,7 +12,8 @@ export const inviteStaff = action(contract, async ({ actor, body }, tx) => {
   if (!site) return notFound();
   await lockAddress(tx.db, body.email);
   const now = await tx.now();
-  const isTaken = (await findRoleOfAddress(tx.db, body.email)) !== null || (await isStaffInvited(tx.db, body.email, now));
+  const isTaken =
+    (await findRoleOfAddress(tx.db, body.email)) !== null || (await isStaffInvited(tx.db, body.email, now));
   if (isTaken) {
     return refuse('staff.address_taken', { siteId: site.id, fields: [{ path: 'email', code: 'address_taken' }] });
   }

@@ -19,7 +19,8 @@ export const recordTraining = action(contract, async ({ actor, params, body }, t
   const { skills, capability, helperName, remark } = body;
   const judged = judgeTraining({ skills, capability, hasHelper: helperName !== undefined });
   if (judged.unknown.length > 0) {
-    const pathOf = (item: string) => `${item in capability && !capabilityItems.includes(item) ? 'capability' : 'skills'}.${item}`;
+    const pathOf = (item: string) =>
+      `${item in capability && !capabilityItems.includes(item) ? 'capability' : 'skills'}.${item}`;
     const fields = judged.unknown.map((item) => ({ path: pathOf(item), code: 'training.skill_unknown' }));
     return refuse('training.skill_unknown', { ...whose, fields });
   }
@@ -28,7 +29,14 @@ export const recordTraining = action(contract, async ({ actor, params, body }, t
   const signedOff = judged.complete;
   const validUntil = signedOff ? validUntilOf(now, protocol.settings.trainingValidDays) : null;
   await insertTraining(tx.db, {
-    ...{ id, participantId: participant.id, skills, capability, helperName: helperName ?? null, remark: remark ?? null },
+    ...{
+      id,
+      participantId: participant.id,
+      skills,
+      capability,
+      helperName: helperName ?? null,
+      remark: remark ?? null,
+    },
     ...{ signedOff, validUntil, recordedBy: actor.accountId, createdAt: now },
   });
   tx.record({
