@@ -160,6 +160,7 @@ export function TopBar({ current }: { current?: RailId }) {
         style={{
           flexDirection: 'row',
           alignItems: 'center',
+          flexWrap: 'wrap',
           justifyContent: 'space-between',
           paddingHorizontal: space[4],
           paddingVertical: space[2],

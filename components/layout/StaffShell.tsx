@@ -37,6 +37,7 @@ export interface StaffShellProps {
 
 function Crumbs({ crumbs }: { crumbs: readonly Crumb[] }) {
   const { t } = useTranslation('common');
+  const { rem } = useTheme();
   return (
     <View
       role="navigation"
@@ -46,7 +47,7 @@ function Crumbs({ crumbs }: { crumbs: readonly Crumb[] }) {
     >
       {crumbs.map((crumb, index) => (
         <View key={crumb.label} style={{ flexDirection: 'row', alignItems: 'center', gap: space[1] + space.half }}>
-          {index > 0 ? <Icon name="forward" tone="muted" size={10} /> : null}
+          {index > 0 ? <Icon name="forward" tone="muted" size={rem(0.625)} /> : null}
           {crumb.href ? (
             <Link href={crumb.href} size="fine" weight="regular" tone="muted">
               {crumb.label}

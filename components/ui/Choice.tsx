@@ -197,6 +197,7 @@ export function Chips<T extends string>(props: ChipsProps<T>) {
                 minHeight: Math.max(theme.touch, theme.rem(theme.density === 'reading' ? 3.25 : 2.25)),
                 paddingHorizontal: space[4],
                 paddingVertical: space[1],
+                maxWidth: '100%',
                 borderRadius: radius,
                 borderWidth: stroke.firm,
                 borderColor: isChosen || hovered ? colour.action : colour.line,
@@ -204,7 +205,9 @@ export function Chips<T extends string>(props: ChipsProps<T>) {
               })}
             >
               {isChosen ? <Icon name="tick" tone="action" /> : null}
-              <Text weight={isChosen ? 'bold' : 'regular'}>{option.label}</Text>
+              <View style={{ flexShrink: 1 }}>
+                <Text weight={isChosen ? 'bold' : 'regular'}>{option.label}</Text>
+              </View>
             </Pressable>
           );
         })}

@@ -9,7 +9,7 @@ import { Icon } from '@/components/ui/Icon';
 import { PageLabel, type FieldWiring } from '@/components/ui/page-controls';
 import { Text } from '@/components/ui/Text';
 import { VisuallyHidden } from '@/components/ui/VisuallyHidden';
-import { space } from '@/components/ui/theme';
+import { space, useTheme } from '@/components/ui/theme';
 
 export interface FieldProps {
   label: string;
@@ -33,10 +33,11 @@ export function useFieldWiring({ hint, error }: Pick<FieldProps, 'hint' | 'error
 }
 
 export function FieldMessages({ wiring, error }: { wiring: FieldWiring; error?: string }) {
+  const { rem } = useTheme();
   if (!error) return null;
   return (
     <View style={{ flexDirection: 'row', gap: space[2], alignItems: 'baseline' }}>
-      <Icon name="stop" tone="stop" size={12} />
+      <Icon name="stop" tone="stop" size={rem(0.75)} />
       <Text id={`${wiring.controlId}-error`} size="small" tone="stop" weight="bold" role="alert" grow>
         {error}
       </Text>

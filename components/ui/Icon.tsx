@@ -31,7 +31,7 @@ export type IconName =
 export interface IconProps {
   name: IconName;
   tone?: Tone;
-  /** Side in px; 16 unless given. */
+  /** Side in px; as high as the text of a panel unless given. */
   size?: number;
 }
 
@@ -71,14 +71,15 @@ const cuts: Partial<Record<IconName, string>> = {
   info: 'M8 7.3 V11.4 M8 4.7 V5.2',
 };
 
-export function Icon({ name, tone = 'ink', size = 16 }: IconProps) {
-  const { colour } = useTheme();
+export function Icon({ name, tone = 'ink', size }: IconProps) {
+  const { colour, rem } = useTheme();
+  const side = size ?? rem(1);
   const ink = colour[tone];
   const shape = filled[name];
   const line = lines[name];
   const cut = cuts[name];
   return (
-    <Svg width={size} height={size} viewBox="0 0 16 16" {...hidden}>
+    <Svg width={side} height={side} viewBox="0 0 16 16" {...hidden}>
       {name === 'steady' || name === 'info' ? <Circle cx={8} cy={8} r={7} fill={ink} /> : null}
       {name === 'none' ? <Circle cx={8} cy={8} r={5.5} fill="none" stroke={ink} strokeWidth={2} /> : null}
       {shape ? <Path d={shape} fill={ink} strokeLinejoin="round" /> : null}

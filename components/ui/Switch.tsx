@@ -31,9 +31,16 @@ export function Switch({ label, hint, value, onChange, disabled, testID }: Switc
       disabled={disabled}
       onPress={() => onChange(!value)}
       testID={testID}
-      style={{ flexDirection: 'row', alignItems: 'center', gap: space[4], minHeight: touch, borderRadius: radius }}
+      style={{
+        flexDirection: 'row',
+        flexWrap: 'wrap',
+        alignItems: 'center',
+        columnGap: space[4],
+        minHeight: touch,
+        borderRadius: radius,
+      }}
     >
-      <View style={{ flex: 1, minWidth: 0 }}>
+      <View style={{ flexGrow: 1, flexShrink: 1, flexBasis: rem(9), minWidth: 0 }}>
         <Text id={`${id}-label`} tone={disabled ? 'muted' : 'ink'}>
           {label}
         </Text>

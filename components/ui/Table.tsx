@@ -52,6 +52,8 @@ export interface TableProps<Row> {
   empty?: ReactNode;
   /** Keeps the head in view while the page scrolls. */
   stickyHead?: boolean;
+  /** What the table stands on, so that a head that stays covers the rows under it. */
+  ground?: 'surface' | 'raised';
 }
 
 function columnStyle<Row>(column: Column<Row>, theme: Theme): ViewStyle {
@@ -110,7 +112,9 @@ function HeadCell<Row>({ column, sort, onSort }: { column: Column<Row>; sort?: S
           }}
         >
           {word}
-          {isSorted ? <Icon name={sort.direction === 'ascending' ? 'sortUp' : 'sortDown'} size={12} /> : null}
+          {isSorted ? (
+            <Icon name={sort.direction === 'ascending' ? 'sortUp' : 'sortDown'} size={theme.rem(0.75)} />
+          ) : null}
         </Pressable>
       ) : (
         word
@@ -132,6 +136,7 @@ export function Table<Row>(props: TableProps<Row>) {
     spacing = 'roomy',
     empty,
     stickyHead = true,
+    ground = 'surface',
   } = props;
   const theme = useTheme();
   const { colour } = theme;
@@ -161,10 +166,7 @@ export function Table<Row>(props: TableProps<Row>) {
       {isPhone ? null : (
         <View
           role="rowgroup"
-          style={{
-            backgroundColor: colour.surface,
-            ...(stickyHead ? { position: 'sticky', top: space[0], zIndex: 1 } : {}),
-          }}
+          style={stickyHead ? { position: 'sticky', top: space[0], zIndex: 1, backgroundColor: colour[ground] } : {}}
         >
           <View
             role="row"
@@ -201,18 +203,32 @@ export function Table<Row>(props: TableProps<Row>) {
                 role={isHeader ? 'rowheader' : 'cell'}
                 style={
                   isPhone
-                    ? { flexDirection: 'row', alignItems: 'baseline', columnGap: space[3] }
+                    ? { flexDirection: 'row', flexWrap: 'wrap', alignItems: 'baseline', columnGap: space[3] }
                     : columnStyle(column, theme)
                 }
               >
                 {isPhone && !isHeader && !column.bareOnPhone && !column.hideHeader ? (
-                  <View style={{ width: theme.rem(7), flexShrink: 0 }}>
+                  <View style={{ width: theme.rem(6), flexShrink: 0 }}>
                     <Text size="fine" tone="muted">
                       {column.header}
                     </Text>
                   </View>
                 ) : null}
-                {isPhone ? <View style={{ flex: 1, minWidth: 0, alignItems: 'flex-start' }}>{content}</View> : content}
+                {isPhone ? (
+                  <View
+                    style={{
+                      flexGrow: 1,
+                      flexShrink: 1,
+                      flexBasis: theme.rem(8),
+                      minWidth: 0,
+                      alignItems: 'flex-start',
+                    }}
+                  >
+                    {content}
+                  </View>
+                ) : (
+                  content
+                )}
               </View>
             );
           });

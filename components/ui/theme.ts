@@ -2,7 +2,16 @@
  * The one place for colours, spacing, type sizes and motion, named by role and not by hue, and the small context that
  * says which of them holds now. It must not know any screen, and no other file may hold a colour or a length of its own.
  */
-import { createContext, createElement, use, useEffect, useMemo, useState, type ReactNode } from 'react';
+import {
+  createContext,
+  createElement,
+  use,
+  useEffect,
+  useMemo,
+  useState,
+  useSyncExternalStore,
+  type ReactNode,
+} from 'react';
 import { useColorScheme } from 'react-native';
 
 export interface Colours {
@@ -83,6 +92,9 @@ export const dark: Colours = {
   veil: 'rgba(0, 0, 0, 0.6)',
   shadow: 'rgba(0, 0, 0, 0.5)',
 };
+
+/** Printed pages are light whatever the screen was, on a ground that takes no ink. */
+export const printed: Colours = { ...light, surface: '#FFFFFF', raised: '#FFFFFF' };
 
 /** Four-point scale; the name is the number of steps of 4 px. */
 export const space = {
@@ -173,6 +185,7 @@ interface Settings {
   textScale: number;
   setTextScale(scale: number): void;
   rootScale: number;
+  isPrinting: boolean;
 }
 
 const SettingsContext = createContext<Settings>({
@@ -181,6 +194,7 @@ const SettingsContext = createContext<Settings>({
   textScale: 1,
   setTextScale: () => undefined,
   rootScale: 1,
+  isPrinting: false,
 });
 const DensityContext = createContext<Density>('panel');
 
@@ -189,6 +203,23 @@ function browserTextScale(): number {
   if (typeof document === 'undefined') return 1;
   const size = Number.parseFloat(getComputedStyle(document.documentElement).fontSize);
   return Number.isFinite(size) && size > 0 ? size / 16 : 1;
+}
+
+const printQuery = () => (typeof matchMedia === 'undefined' ? undefined : matchMedia('print'));
+
+function subscribeToPrint(onChange: () => void): () => void {
+  const query = printQuery();
+  query?.addEventListener('change', onChange);
+  return () => query?.removeEventListener('change', onChange);
+}
+
+/** A store read at once, so that the page has changed before the browser lays it out on paper. */
+function useIsPrinting(): boolean {
+  return useSyncExternalStore(
+    subscribeToPrint,
+    () => printQuery()?.matches ?? false,
+    () => false,
+  );
 }
 
 export interface ThemeProviderProps {
@@ -208,6 +239,7 @@ export function ThemeProvider({
   const [mode, keepMode] = useState<Mode>(initialMode);
   const [textScale, keepTextScale] = useState(initialTextScale);
   const [rootScale] = useState(browserTextScale);
+  const isPrinting = useIsPrinting();
 
   useEffect(() => {
     // The page's ground, scroll bars and focus ring come from the style sheet and follow this mark.
@@ -227,8 +259,9 @@ export function ThemeProvider({
         onChange?.({ mode, textScale: next });
       },
       rootScale,
+      isPrinting,
     }),
-    [mode, textScale, rootScale, onChange],
+    [mode, textScale, rootScale, isPrinting, onChange],
   );
   return createElement(SettingsContext, { value: settings }, children);
 }
@@ -239,14 +272,14 @@ export function DensityProvider({ density, children }: { density: Density; child
 }
 
 export function useTheme(): Theme {
-  const { mode, setMode, textScale, setTextScale, rootScale } = use(SettingsContext);
+  const { mode, setMode, textScale, setTextScale, rootScale, isPrinting } = use(SettingsContext);
   const density = use(DensityContext);
   const system = useColorScheme();
-  const isDark = mode === 'dark' || (mode === 'system' && system === 'dark');
+  const isDark = !isPrinting && (mode === 'dark' || (mode === 'system' && system === 'dark'));
   return useMemo(() => {
     const scale = textScale * rootScale;
     return {
-      colour: isDark ? dark : light,
+      colour: isPrinting ? printed : isDark ? dark : light,
       isDark,
       mode,
       setMode,
@@ -260,5 +293,5 @@ export function useTheme(): Theme {
       rem: (count) => count * 16 * scale,
       touch: touch[density],
     };
-  }, [isDark, mode, setMode, textScale, setTextScale, rootScale, density]);
+  }, [isDark, isPrinting, mode, setMode, textScale, setTextScale, rootScale, density]);
 }
