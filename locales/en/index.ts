@@ -13,10 +13,14 @@ import forms from './forms.json';
 import messages from './messages.json';
 import participant from './participant.json';
 import participants from './participants.json';
+import precheck from './precheck.json';
 import prescription from './prescription.json';
 import protocol from './protocol.json';
 import publicWords from './public.json';
 import review from './review.json';
+import sessions from './sessions.json';
+import equipment from './equipment.json';
+import report from './report.json';
 import session from './session.json';
 import site from './site.json';
 import staff from './staff.json';
@@ -35,10 +39,14 @@ export const en = {
   messages,
   participant,
   participants,
+  precheck,
   prescription,
   protocol,
   public: publicWords,
   review,
+  sessions,
+  equipment,
+  report,
   session,
   site,
   staff,
