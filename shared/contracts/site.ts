@@ -95,6 +95,9 @@ export const suspendStaff = contract({
   about: 'Suspends a member of staff, or lets them back; a suspension ends their sessions at once.',
 });
 
+/** Its shape stands with the values, since rules and queries read it too. */
+export { ProtocolSettings } from '@/shared/values/protocol-settings';
+
 export const ProtocolView = z.strictObject({
   id: Uuid,
   siteId: Uuid,
