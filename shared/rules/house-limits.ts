@@ -54,3 +54,6 @@ export const exportSliceRows = 1000;
 
 /** Earlier reports that the diary rules look at: moderate in 3 of 5 asks for most (safety rules §7). */
 export const reportsLookBack = 5;
+
+/** Pieces of one kind of scheduled work that are taken at once. Own choice. */
+export const jobBatch = 200;

@@ -1,13 +1,24 @@
-// When a notice to a person may arrive: not in the quiet hours of where the person lives (guidance R70). Pages to staff never ask.
+// When a notice to a person may be sent: not in the night of their own zone. Pages to staff never wait.
 
-import { isoOf, parseInstant } from '@/shared/values/zone';
-import { openHoursAt } from './hours';
-import { quietHours } from './house-limits';
+import { addDays, instantOf, isoOf, localMoment, parseInstant } from '@/shared/values/zone';
+import { hourMilliseconds } from '@/shared/values/units';
+import { nudgeLifeHours, quietHours } from './house-limits';
 
-/** Now, or the end of the quiet hours that it falls into. An unreadable clock or zone delays nothing. */
+/** Now, or the end of the quiet hours; in an unknown zone at once, since when the night is cannot be told. */
 export function afterQuietHours(now: string, zone: string): string {
-  const at = parseInstant(now);
-  if (at === undefined) return now;
-  const quiet = openHoursAt(at, { hoursFrom: quietHours.from, hoursTo: quietHours.to, zone });
-  return quiet === undefined ? now : isoOf(quiet.closesAt);
+  const instant = parseInstant(now) ?? Number.NaN;
+  const { date, time } = localMoment(instant, zone);
+  const isLate = time >= quietHours.from;
+  if (date === '' || (!isLate && time >= quietHours.to)) return now;
+  return isoOf(instantOf(isLate ? addDays(date, 1) : date, quietHours.to, zone));
+}
+
+/** After this a nudge is stale. */
+export function nudgeDropAt(dueAt: string): string {
+  return isoOf((parseInstant(dueAt) ?? Number.NaN) + nudgeLifeHours * hourMilliseconds);
+}
+
+/** What a mail that reveals nothing calls a person. */
+export function firstNameOf(name: string): string {
+  return name.trim().split(/\s+/)[0] ?? '';
 }

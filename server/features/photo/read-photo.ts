@@ -12,5 +12,6 @@ export const readPhoto = action(contract, async ({ actor, params }, tx) => {
   if (!participant || !bytes) return notFound();
   const { id, siteId } = participant;
   tx.record({ participantId: id, siteId, kind: 'read', subject: { kind: 'photo', id: params.photoId } });
-  return { type: 'image/jpeg', bytes } as const;
+  // A copy: the driver's buffer is a view into a larger one.
+  return { type: 'image/jpeg', bytes: new Uint8Array(bytes) } as const;
 });
