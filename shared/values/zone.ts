@@ -58,15 +58,36 @@ export function isZone(zone: string): boolean {
   return formatterOf(zone) !== null;
 }
 
+/** What Intl says, some ten microseconds a time. */
+function formattedWallClock(milliseconds: number, formatter: Intl.DateTimeFormat): number {
+  const part = new Map(formatter.formatToParts(milliseconds).map(({ type, value }) => [type, Number(value)]));
+  const of = (type: Intl.DateTimeFormatPartTypes) => part.get(type) ?? Number.NaN;
+  const fraction = ((milliseconds % 1000) + 1000) % 1000;
+  return Date.UTC(of('year'), of('month') - 1, of('day'), of('hour'), of('minute'), of('second')) + fraction;
+}
+
+/** Since Liberia gave up −0:44:30 in 1972 every zone has changed its offset at a whole quarter of an hour UTC. */
+const slotMilliseconds = 15 * minuteMilliseconds;
+const slotsSince = Date.UTC(1973, 0, 1);
+const offsets = new Map<string, number>();
+const mostOffsets = 20_000;
+
 /** The zone's wall clock at an instant, written as if it were UTC, in milliseconds. */
 function wallClock(milliseconds: number, zone: string): number {
   const formatter = formatterOf(zone);
-  if (formatter === null) return Number.NaN;
-  const part: Record<string, number> = {};
-  for (const { type, value } of formatter.formatToParts(milliseconds)) part[type] = Number(value);
-  const { year = Number.NaN, month = 1, day = 1, hour = 0, minute = 0, second = 0 } = part;
-  const fraction = ((milliseconds % 1000) + 1000) % 1000;
-  return Date.UTC(year, month - 1, day, hour, minute, second) + fraction;
+  if (formatter === null || !Number.isFinite(milliseconds)) return Number.NaN;
+  if (milliseconds < slotsSince) return formattedWallClock(milliseconds, formatter);
+  const slot = Math.floor(milliseconds / slotMilliseconds);
+  const key = `${zone} ${slot}`;
+  let offset = offsets.get(key);
+  if (offset === undefined) {
+    // A clearance asks for the same few quarters of an hour again and again.
+    const start = slot * slotMilliseconds;
+    offset = formattedWallClock(start, formatter) - start;
+    if (offsets.size >= mostOffsets) offsets.clear();
+    offsets.set(key, offset);
+  }
+  return milliseconds + offset;
 }
 
 /** `2026-05-12` and `18:30:00` of an instant in a zone; weekday 1 = Monday … 7 = Sunday. */
@@ -115,6 +136,7 @@ function afterTheJump(wanted: number, zone: string): number {
 export function instantOf(date: string, time: string, zone: string, which: 'first' | 'last' = 'first'): number {
   if (!isDate(date) || !isTime(time) || !isZone(zone)) return Number.NaN;
   const wanted = Date.parse(`${date}T${time.length === 5 ? `${time}:00` : time}Z`);
+  // Three places to ask for the offset: before, at and after any change that could concern this time.
   const hits = [wanted - searchMilliseconds, wanted, wanted + searchMilliseconds]
     .map((near) => wanted - (wallClock(near, zone) - near))
     .filter((candidate) => wallClock(candidate, zone) === wanted);

@@ -32,7 +32,42 @@ const someMinute = fc
   .map((minutes) => minutes * minute);
 const runs = { numRuns: 400 };
 
+const day = 24 * 60 * minute;
+
+/** The instant within the next day at which the distance to UTC changes, to the minute. */
+function nextChange(start: number, platform: Intl.DateTimeFormat): number | undefined {
+  const offsetAt = (instant: number) =>
+    platform.formatToParts(instant).find(({ type }) => type === 'timeZoneName')?.value;
+  const before = offsetAt(start);
+  if (offsetAt(start + day) === before) return undefined;
+  let [low, high] = [start, start + day];
+  while (high - low > minute) {
+    const middle = low + Math.floor((high - low) / minute / 2) * minute;
+    if (offsetAt(middle) === before) low = middle;
+    else high = middle;
+  }
+  return high;
+}
+
 describe.each(zones)('%s', (zone) => {
+  it('shows the wall clock that the platform shows, around every change of the clocks too', () => {
+    const platform = new Intl.DateTimeFormat('sv-SE', { timeZone: zone, dateStyle: 'short', timeStyle: 'medium' });
+    const shows = (instant: number) => {
+      const { date, time } = localMoment(instant, zone);
+      return `${date} ${time}` === platform.format(instant);
+    };
+    fc.assert(
+      fc.property(someMinute, (instant) => shows(instant) && shows(instant - 1)),
+      runs,
+    );
+    const named = new Intl.DateTimeFormat('en', { timeZone: zone, timeZoneName: 'longOffset' });
+    for (let start = Date.parse('2026-01-01T00:00:00Z'); start < Date.parse('2027-01-01T00:00:00Z'); start += day) {
+      const change = nextChange(start, named);
+      if (change === undefined) continue;
+      expect([isoOf(change), shows(change), shows(change - 1)]).toEqual([isoOf(change), true, true]);
+    }
+  });
+
   it('finds every instant again by its local time, as the first or as the last of its kind', () => {
     fc.assert(
       fc.property(someMinute, (instant) => {
@@ -78,11 +113,10 @@ describe.each(zones)('%s', (zone) => {
   });
 
   it('covers the years with days, one after the other, without a hole', () => {
-    let day = '2011-12-20';
     for (let count = 0; count < 400; count += 1) {
-      expect(endOfDay(day, zone)).toBe(startOfDay(addDays(day, 1), zone));
-      expect([day, dayExists(day, zone)]).toEqual([day, zone !== 'Pacific/Apia' || day !== '2011-12-30']);
-      day = addDays(day, 1);
+      const date = addDays('2011-12-20', count);
+      expect(endOfDay(date, zone)).toBe(startOfDay(addDays(date, 1), zone));
+      expect([date, dayExists(date, zone)]).toEqual([date, zone !== 'Pacific/Apia' || date !== '2011-12-30']);
     }
   });
 });
