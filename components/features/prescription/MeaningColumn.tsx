@@ -13,7 +13,7 @@ import { Text } from '@/components/ui/Text';
 import { space, useTheme } from '@/components/ui/theme';
 import type { PrescriptionView } from '@/shared/contracts/prescription';
 import { chargeOf, doseFactsOf, judgeDose, minutesOn, type DoseRow } from '@/shared/rules/dose';
-import type { SiteLimits } from '@/shared/rules/site-limits';
+import type { SiteLimits } from '@/shared/values/protocol-settings';
 import { LimitBar } from './pictures/LimitBar';
 import type { PrescriptionInput } from './PrescriptionEditor';
 
@@ -55,16 +55,16 @@ export function MeaningColumn({ value, before, ageYears, limits }: MeaningColumn
       <Card heading={t('limits')}>
         <View style={{ gap: space[5] }}>
           {bars.map((row) => (
-            <Bar key={row.row} row={row} />
+            <Bar key={row.quantity} row={row} />
           ))}
         </View>
       </Card>
       <Card heading={t('other')}>
         <View style={{ gap: space[2] }}>
           {others.map((row) => (
-            <View key={`${row.row} ${row.fact ?? ''}`} style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[3] }}>
+            <View key={`${row.quantity} ${row.fact ?? ''}`} style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[3] }}>
               <View style={{ flexGrow: 1 }}>
-                <Text>{t(`row.${row.row}`)}</Text>
+                <Text>{t(`row.${row.quantity}`)}</Text>
                 <Text size="fine" tone="muted">
                   {t('sourceOnly', { source: row.source })}
                 </Text>
@@ -88,7 +88,7 @@ function Bar({ row }: { row: DoseRow }) {
   const binding = row.siteLimit ?? row.routineLimit ?? row.ceiling ?? 0;
   return (
     <LimitBar
-      label={t(`row.${row.row}`)}
+      label={t(`row.${row.quantity}`)}
       value={row.value ?? 0}
       unit={row.unit}
       ceiling={row.ceiling ?? 0}

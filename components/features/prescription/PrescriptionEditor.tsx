@@ -15,7 +15,7 @@ import { Notice } from '@/components/ui/Notice';
 import { space, useTheme } from '@/components/ui/theme';
 import type { ParticipantView } from '@/shared/contracts/participant';
 import { writePrescription, type PrescriptionView } from '@/shared/contracts/prescription';
-import type { ProtocolSettings } from '@/shared/contracts/site';
+import type { ProtocolSettings } from '@/shared/values/protocol-settings';
 import { addDays, localMoment } from '@/shared/values/zone';
 import { ChangesCard } from './ChangesCard';
 import { DoseFields } from './DoseFields';
