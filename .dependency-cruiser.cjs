@@ -99,10 +99,10 @@ module.exports = {
       'http, auth, mail',
       '^server/(http|auth|mail)/',
       [
-        ...['^server/$1/', ground, '^server/transact\\.ts$', '^db/queries/(account|house)\\.ts$', '^db/client\\.ts$'],
-        ...['^db/schema/account\\.ts$', '^locales/', shared],
+        ...['^server/$1/', '^server/auth/', ground, '^server/transact\\.ts$', '^db/queries/(account|house)\\.ts$'],
+        ...['^db/(client|sql-state)\\.ts$', '^db/schema/account\\.ts$', '^locales/', shared],
       ],
-      'http, auth and mail carry things in and out. They know accounts and the outbox, not what a feature does.',
+      'http, auth and mail carry things in and out. They know sign-in, accounts and the outbox, not what a feature does.',
     ),
     row(
       'server ground',
@@ -131,7 +131,7 @@ module.exports = {
       comment:
         'A file stands where the house has no room for it. Choose a folder from the table in DEVELOPERS.md, or decide about a new one.',
       from: {
-        path: '^(components/(?!(ui|forms|runtime|layout|features)/)|shared/(?!(values|rules|contracts|estimates)/)|server/(?!(http|auth|mail|demo|features)/)[^/]+/)',
+        path: '^(components/(?!(ui|forms|runtime|layout|features)/)|shared/(?!(values|rules|contracts|estimates)/)|server/(?!(http|auth|mail|demo|features|house)/)[^/]+/)',
       },
       to: {},
     },
@@ -155,7 +155,7 @@ module.exports = {
       severity: 'error',
       comment:
         'An action is handed its tx; it never opens a transaction, so it imports types of server/transact.ts only.',
-      from: { path: '^server/features/' },
+      from: { path: '^server/(features|house)/' },
       to: { path: '^server/transact\\.ts$', dependencyTypesNot: ['type-only'] },
     },
     {

@@ -2,7 +2,8 @@
 // nothing over the network: what must be sent is kept and sent after the commit.
 
 import { createHash, randomUUID } from 'node:crypto';
-import { sqlStateOf, type Client, type Db, type Execute } from '@/db/client';
+import type { Client, Db, Execute } from '@/db/client';
+import { sqlStateOf } from '@/db/sql-state';
 import { appendAudit, canonicalJson, type AuditContent } from '@/db/queries/audit';
 import { findKeySeen, insertKeySeen, insertOutbox, lockName, tryLockName } from '@/db/queries/house';
 import { listSitesOfParticipants } from '@/db/queries/site-contact';

@@ -1,7 +1,7 @@
 // The last stop of what went wrong: a fault becomes 500 with the request's id, a database that is away 503. Never a stack, never a reason.
 
 import type { NextFunction, Request, Response } from 'express';
-import { sqlStateOf } from '@/db/client';
+import { sqlStateOf } from '@/db/sql-state';
 import { sendProblem, type BareProblem } from './problem';
 
 /** Until the database may be back (own choice). */
