@@ -117,7 +117,7 @@ export function FormNumberField<V extends FieldValues, T>({
     <NumberField
       {...rest}
       value={typeof held === 'number' ? held / scale : null}
-      // A whole unit stays whole: 1.1 mA is 1100 µA and not 1100.0000000000002.
+      // A whole unit stays whole: 2.01 mA is 2010 µA and not 2009.9999999999998.
       onChange={(value) => change(value === null ? null : scale === 1 ? value : Math.round(value * scale))}
       onBlur={onBlur}
       inputRef={ref}

@@ -130,9 +130,9 @@ describe('a form of a contract', () => {
     const user = userEvent.setup();
     await user.type(screen.getByLabelText('Reason'), 'Skin to settle first');
     await user.clear(screen.getByLabelText('Intensity'));
-    await user.type(screen.getByLabelText('Intensity'), '1.1{Enter}');
+    await user.type(screen.getByLabelText('Intensity'), '2.01{Enter}');
     await act(async () => undefined);
-    expect(sent).toEqual([{ reason: 'Skin to settle first', intensityMicroamp: 1100 }]);
+    expect(sent).toEqual([{ reason: 'Skin to settle first', intensityMicroamp: 2010 }]);
   });
 
   test("puts the server's findings on their fields, goes to the first, and loses none", async () => {
