@@ -27,11 +27,11 @@ function sessionOfPlanned(db: Db, courseIds: readonly string[]) {
   return db
     .selectDistinctOn([session.plannedSessionId], {
       plannedSessionId: session.plannedSessionId,
-      id: sql<string>`${session.id}`.as('session_id'),
+      id: sql<string>`${session.id}`.as('begun_session_id'),
       startedAt: session.startedAt,
       endedAt: session.endedAt,
-      isClosed: sql<boolean>`${session.closedAt} is not null`.as('is_closed'),
-      onMs: sql<number | null>`${session.onMs}`.as('session_on_ms'),
+      isClosed: sql<boolean>`${session.closedAt} is not null`.as('begun_is_closed'),
+      onMs: sql<number | null>`${session.onMs}`.as('begun_on_ms'),
       fractionPermille: session.fractionPermille,
       completeness: session.completeness,
     })
@@ -121,8 +121,14 @@ function loadStrip(db: Db, courseIds: readonly string[], now: string) {
 
 type StripRow = Awaited<ReturnType<typeof loadStrip>>[number];
 
+/** Hardly any current flowed and the window is still open: the session is still to be done. */
+function isStillToDo(row: StripRow, now: string): boolean {
+  if (row.closedWhy !== null || row.windowTo <= now) return false;
+  return row.sessionId === null || (row.isClosed === true && row.completeness === 'not_delivered');
+}
+
 function stateOf(row: StripRow, isNext: boolean, now: string): CourseMarkRecord['state'] {
-  if (row.sessionId !== null) {
+  if (row.sessionId !== null && !isStillToDo(row, now)) {
     if (row.isClosed !== true) return 'running';
     return row.completeness === 'complete' ? 'delivered' : 'partial';
   }
@@ -148,8 +154,7 @@ export async function listMarks(
   const withNext = new Set<string>();
   for (const row of await loadStrip(db, courseIds, now)) {
     const strip = strips.get(row.courseId) ?? [];
-    const isOpen = row.sessionId === null && row.closedWhy === null && row.windowTo > now;
-    const isNext = isOpen && !withNext.has(row.courseId);
+    const isNext = isStillToDo(row, now) && !withNext.has(row.courseId);
     if (isNext) withNext.add(row.courseId);
     strip.push({
       plannedSessionId: row.plannedSessionId,
@@ -215,9 +220,11 @@ function loadPlanned(db: Db, courseIds: readonly string[]) {
 type PlannedRow = Awaited<ReturnType<typeof loadPlanned>>[number];
 
 function adherenceStateOf(row: PlannedRow): PlannedFacts['sessions'][number]['state'] {
-  if (row.isClosed === true) return row.completeness ?? 'not_delivered';
+  const isOpen = row.closedWhy === null;
+  if (row.isClosed === true && !(isOpen && row.completeness === 'not_delivered'))
+    return row.completeness ?? 'not_delivered';
   // Begun, its record not whole: neither done nor missed yet.
-  if (row.isClosed === false || row.closedWhy === null) return 'future';
+  if (row.isClosed === false || isOpen) return 'future';
   if (row.closedWhy === 'missed' || row.closedWhy === 'excused' || row.closedWhy === 'cancelled') return row.closedWhy;
   return 'not_delivered';
 }
@@ -262,14 +269,12 @@ export async function listPlanned(db: Db, courseIds: readonly string[]): Promise
   if (courseIds.length === 0) return found;
   for (const row of await loadPlanned(db, courseIds)) {
     const { courseId, windowFrom, windowTo, endedAt } = row;
-    found
-      .get(courseId)
-      ?.sessions.push({
-        windowFrom,
-        windowTo,
-        state: adherenceStateOf(row),
-        ...(row.isClosed === true && endedAt !== null ? { endedAt } : {}),
-      });
+    found.get(courseId)?.sessions.push({
+      windowFrom,
+      windowTo,
+      state: adherenceStateOf(row),
+      ...(row.isClosed === true && endedAt !== null ? { endedAt } : {}),
+    });
   }
   for (const { courseId, from, until } of await listHolds(db, courseIds)) {
     found.get(courseId)?.holds.push(until === null ? { from } : { from, until });
