@@ -75,6 +75,8 @@ export interface Tx {
   tell(message: OutboxMessage): void;
   /** Base address of this server, for links in mails. */
   readonly baseUrl: string;
+  /** True with DEMO=1: invented people, and no second factor asked of staff. */
+  readonly isDemo: boolean;
   /**
    * The token of a caregiver's "stop these mails" link, made again from the server's secret whenever a mail needs it (`stopTokenFor` in
    * server/mail-stop.ts); the database holds its SHA-256 alone.

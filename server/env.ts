@@ -24,6 +24,8 @@ export interface Env {
   /** Given, not made from host and port: then no other origin is ours. */
   baseUrlIsGiven: boolean;
   limitsRequests: boolean;
+  /** Address of the account that a server without accounts begins with. */
+  firstAdministrator: string | null;
   logLevel: string;
   /** Folder of the exported pages. */
   webFolder: string;
@@ -58,6 +60,10 @@ const Variables = z.object({
   MAIL_FROM: given.regex(/@/).default(demoSender),
   BASE_URL: z.url({ protocol: /^https?$/ }).optional(),
   RATE_LIMITS: yesOrNo.optional(),
+  FIRST_ADMINISTRATOR: z
+    .email()
+    .transform((email) => email.toLowerCase())
+    .optional(),
   LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'silent']).default('info'),
   WEB_FOLDER: given.default('dist'),
 });
@@ -75,6 +81,7 @@ const allowed: Record<keyof z.infer<typeof Variables>, string> = {
   MAIL_FROM: 'the sender of mails, such as Clinic <no-reply@clinic.example>',
   BASE_URL: 'the address under which people reach this server, https://…',
   RATE_LIMITS: 'on or off',
+  FIRST_ADMINISTRATOR: 'an e-mail address',
   LOG_LEVEL: 'fatal, error, warn, info, debug or silent',
   WEB_FOLDER: 'the folder of the exported pages',
 };
@@ -109,6 +116,7 @@ export function readEnv(source: Source = process.env): Env {
     baseUrl: v.BASE_URL ? new URL(v.BASE_URL).origin : `http://${host}:${v.PORT}`,
     baseUrlIsGiven: v.BASE_URL !== undefined,
     limitsRequests: v.RATE_LIMITS ?? !v.DEMO,
+    firstAdministrator: v.FIRST_ADMINISTRATOR ?? null,
     logLevel: v.LOG_LEVEL,
     webFolder: path.resolve(v.WEB_FOLDER),
     version,

@@ -4,7 +4,7 @@
 import { createHash, randomUUID } from 'node:crypto';
 import type { Client, Db, Execute } from '@/db/client';
 import { sqlStateOf } from '@/db/sql-state';
-import { appendAudit, canonicalJson, type AuditContent } from '@/db/queries/audit';
+import { appendAudit, type AuditContent } from '@/db/queries/audit';
 import { findKeySeen, insertKeySeen, insertOutbox, lockName, tryLockName } from '@/db/queries/house';
 import { listSitesOfParticipants } from '@/db/queries/site-contact';
 import type {
@@ -25,6 +25,7 @@ import { stopTokenFor } from '@/server/mail-stop';
 import { explainReasons } from '@/server/reasons';
 import { vaultOf } from '@/server/vault';
 import type { ContractShape } from '@/shared/contracts/contract';
+import { canonicalJson } from '@/shared/values/canonical';
 
 /** An action whose contract is not known at compile time: the mount has parsed what it is given. */
 export interface AnyAction {
@@ -99,6 +100,7 @@ export function makeTransact(client: Client, env: Env, outside: Outside = {}): T
         record: (entry) => void collected.entries.push(entry),
         tell: (message) => void collected.messages.push(message),
         baseUrl: env.baseUrl,
+        isDemo: env.isDemo,
         stopTokenFor: (caregiverId) => stopTokenFor(env.secret, caregiverId),
         vault,
         explain: (reasons, participantId) => explainReasons(db, reasons, participantId),

@@ -118,25 +118,21 @@ export async function insertAccount(db: Db, row: NewAccount): Promise<{ id: stri
     .onConflictDoNothing({ target: authUser.email })
     .returning({ id: authUser.id });
   if (!user) return null;
-  await db
-    .insert(authCredential)
-    .values({
-      id: row.credentialId,
-      accountId: row.id,
-      providerId: 'credential',
-      userId: row.id,
-      password: row.passwordHash,
-    });
-  await db
-    .insert(account)
-    .values({
-      id: row.id,
-      role: row.role,
-      name: row.name,
-      email: row.email,
-      language: row.language,
-      createdAt: row.createdAt,
-    });
+  await db.insert(authCredential).values({
+    id: row.credentialId,
+    accountId: row.id,
+    providerId: 'credential',
+    userId: row.id,
+    password: row.passwordHash,
+  });
+  await db.insert(account).values({
+    id: row.id,
+    role: row.role,
+    name: row.name,
+    email: row.email,
+    language: row.language,
+    createdAt: row.createdAt,
+  });
   return user;
 }
 
@@ -333,5 +329,22 @@ export async function listAccounts(db: Db, limit: number): Promise<ListedAccount
     siteNames: ownSite
       ? [nameOf.get(ownSite) ?? '']
       : memberships.filter((one) => one.accountId === row.id).map((one) => one.siteName),
+  }));
+}
+
+/** Participants who have not accepted their invitation yet, in the shape of accounts. */
+export async function listInvitedParticipants(db: Db, limit: number): Promise<ListedAccount[]> {
+  const rows = await db
+    .select({ id: participant.id, email: participant.email, name: participant.name, siteName: site.name })
+    .from(participant)
+    .innerJoin(site, eq(site.id, participant.siteId))
+    .where(and(isNull(participant.accountId), isNull(participant.closedAt)))
+    .orderBy(participant.createdAt, participant.id)
+    .limit(limit);
+  return rows.map(({ siteName, ...row }) => ({
+    ...row,
+    role: 'participant' as const,
+    siteNames: [siteName],
+    participantId: row.id,
   }));
 }

@@ -5,6 +5,7 @@ import { and, desc, eq, inArray, isNull, sql, type SQL } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { auditEntry } from '@/db/schema/house';
 import { participant } from '@/db/schema/participant';
+import { canonicalJson, type Canonical } from '@/shared/values/canonical';
 
 type Json = string | number | boolean | null | readonly Json[] | { readonly [key: string]: Json | undefined };
 
@@ -30,16 +31,13 @@ export interface AuditContent {
 /** What stands before the first entry of every chain. */
 export const genesisHash = '0'.repeat(64);
 
-/** JSON with sorted keys and without undefined ones: the same value gives the same text, whatever the order it was kept in. */
-export function canonicalJson(value: Json | undefined): string {
-  if (value === undefined) return 'null';
-  if (value === null || typeof value !== 'object') return JSON.stringify(value);
-  if (isList(value)) return `[${value.map(canonicalJson).join(',')}]`;
-  const members = Object.entries(value)
-    .filter(([, member]) => member !== undefined)
-    .sort(([a], [b]) => (a < b ? -1 : 1))
-    .map(([key, member]) => `${JSON.stringify(key)}:${canonicalJson(member)}`);
-  return `{${members.join(',')}}`;
+/** As it will be kept: a key without a value is no key. */
+function withoutUndefined(value: Json): Canonical {
+  if (value === null || typeof value !== 'object') return value;
+  if (isList(value)) return value.map(withoutUndefined);
+  return Object.fromEntries(
+    Object.entries(value).flatMap(([key, member]) => (member === undefined ? [] : [[key, withoutUndefined(member)]])),
+  );
 }
 
 function isList(value: Json): value is readonly Json[] {
@@ -66,21 +64,8 @@ export function canonicalOf(entry: AuditContent): string {
     requestId,
   } = entry;
   return canonicalJson({
-    chain,
-    at,
-    actorId,
-    actorName,
-    actorRole,
-    action,
-    kind,
-    siteId,
-    participantId,
-    subjectKind,
-    subjectId,
-    before,
-    after,
-    why,
-    requestId,
+    ...{ chain, at, actorId, actorName, actorRole, action, kind, siteId, participantId, subjectKind, subjectId },
+    ...{ before: withoutUndefined(before), after: withoutUndefined(after), why, requestId },
   });
 }
 

@@ -2,7 +2,7 @@
 
 import { and, asc, count, desc, eq, gt, isNull, lt, lte, min, or, sql } from 'drizzle-orm';
 import type { Db } from '@/db/client';
-import { demoMail, heartbeat, keySeen, outbox } from '@/db/schema/house';
+import { demoMail, demoProgress, heartbeat, keySeen, outbox } from '@/db/schema/house';
 
 export interface NewOutboxRow {
   id: string;
@@ -154,4 +154,29 @@ export async function listDemoMails(db: Db, to: string | undefined, limit: numbe
     .where(to === undefined ? undefined : or(eq(demoMail.toEmail, to), eq(demoMail.toEmail, to.toLowerCase())))
     .orderBy(desc(demoMail.sentAt), desc(demoMail.id))
     .limit(limit);
+}
+
+/** Facts of the newest invitation that waits to be sent to an address; null when none does. Only the demo reads links here. */
+export async function findOutboxFacts(db: Db, toEmail: string): Promise<unknown> {
+  const [row] = await db
+    .select({ facts: outbox.facts })
+    .from(outbox)
+    .where(and(eq(outbox.toEmail, toEmail), isNull(outbox.closedAt), sql`${outbox.kind} like '%_invitation'`))
+    .orderBy(desc(outbox.createdAt))
+    .limit(1);
+  return row?.facts ?? null;
+}
+
+/** What a step of the demo made; null when it was not done yet. */
+export async function findDemoStep(db: Db, step: string): Promise<unknown> {
+  const [row] = await db
+    .select({ facts: demoProgress.facts })
+    .from(demoProgress)
+    .where(eq(demoProgress.step, step))
+    .limit(1);
+  return row?.facts ?? null;
+}
+
+export async function insertDemoStep(db: Db, step: string, facts: unknown): Promise<void> {
+  await db.insert(demoProgress).values({ step, facts }).onConflictDoNothing();
 }

@@ -6,6 +6,7 @@ import { z } from 'zod';
 import type { Db } from '@/db/client';
 import { acknowledgement, prescription } from '@/db/schema/course';
 import { permit } from '@/db/schema/session';
+import { closeItemsOfPrescriptions } from './worklist';
 import {
   coulombOf,
   hourMilliseconds,
@@ -211,14 +212,16 @@ export async function closePrescription(
     .where(and(eq(prescription.id, prescriptionId), isNull(prescription.closedAt)));
 }
 
-/** Closes what waits for a signature in a course; answers with their ids. */
+/** Closes what waits for a signature in a course, and its rows on the worklist. Answers with their ids. */
 export async function discardDrafts(db: Db, courseId: string, at: string): Promise<string[]> {
   const rows = await db
     .update(prescription)
     .set({ closedAt: at, closedWhy: 'discarded' })
     .where(and(eq(prescription.courseId, courseId), isNull(prescription.signedAt), isNull(prescription.closedAt)))
     .returning({ id: prescription.id });
-  return rows.map(({ id }) => id);
+  const ids = rows.map(({ id }) => id);
+  await closeItemsOfPrescriptions(db, ids, at, 'discarded');
+  return ids;
 }
 
 /** Puts a draft in force as the next version of its course. The version before it must be closed first. */

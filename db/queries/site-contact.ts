@@ -36,9 +36,9 @@ export async function listSiteContacts(db: Db, siteIds: readonly string[]): Prom
 export async function findContactOfParticipant(
   db: Db,
   participantId: string,
-): Promise<{ site: SiteContactRow; zone: string; language: string } | null> {
+): Promise<{ site: SiteContactRow; code: string; zone: string; language: string } | null> {
   const [row] = await db
-    .select({ site: columns, zone: participant.zone, language: participant.language })
+    .select({ site: columns, code: participant.code, zone: participant.zone, language: participant.language })
     .from(participant)
     .innerJoin(site, eq(site.id, participant.siteId))
     .where(eq(participant.id, participantId))

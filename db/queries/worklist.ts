@@ -74,6 +74,15 @@ export async function closeMatter(
   return rows.length > 0;
 }
 
+/** Closes the open rows about these prescriptions. */
+export async function closeItemsOfPrescriptions(db: Db, prescriptionIds: readonly string[], at: string, why: string): Promise<void> {
+  if (prescriptionIds.length === 0) return;
+  await db
+    .update(worklistItem)
+    .set({ closedAt: at, closedWhy: why, escalateAt: null })
+    .where(and(inArray(worklistItem.prescriptionId, [...prescriptionIds]), isNull(worklistItem.closedAt)));
+}
+
 const storedFacts: z.ZodType<Record<string, string | number | boolean | null>> = z.record(
   z.string(),
   z.union([z.string(), z.number(), z.boolean(), z.null()]),

@@ -26,7 +26,7 @@ export async function startCatcher(client: Client): Promise<Catcher> {
             toEmail: addressesOf(mail.to),
             subject: mail.subject ?? '',
             text: mail.text ?? '',
-            html: mail.html === false ? '' : mail.html,
+            html: mail.html || '',
             sentAt: await houseNow(client.db, true),
           });
           done();
