@@ -26,7 +26,11 @@ function migrationsFolder(): string {
  * @param url postgres://…
  */
 export async function migrate(url: string): Promise<void> {
-  const client = new pg.Client({ connectionString: url, application_name: 'rampwell-migrate', options: '-c timezone=UTC' });
+  const client = new pg.Client({
+    connectionString: url,
+    application_name: 'rampwell-migrate',
+    options: '-c timezone=UTC',
+  });
   await client.connect();
   try {
     await client.query('select pg_advisory_lock($1)', [migrationLock]);
