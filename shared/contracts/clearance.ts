@@ -1,7 +1,7 @@
 // "May I start now?" — the answer, and the pre-check that comes before it.
 
 import { z } from 'zod';
-import { precheckAnswersSchema } from '@/shared/rules/precheck';
+import { precheckAnswersSchema } from '@/shared/values/precheck-answers';
 import { Instant, Language, Uuid } from '@/shared/values/primitives';
 import { SiteContact } from './account';
 import { contract } from './contract';

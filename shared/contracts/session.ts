@@ -1,7 +1,7 @@
 // A session as delivered, its diary and photos.
 
 import { z } from 'zod';
-import { diaryAnswersSchema, nextDayAnswersSchema } from '@/shared/rules/lockout';
+import { diaryAnswersSchema, nextDayAnswersSchema } from '@/shared/values/diary-answers';
 import { Instant, Uuid, pageOf, pageQuery } from '@/shared/values/primitives';
 import { SiteContact } from './account';
 import { contract } from './contract';

@@ -1,6 +1,6 @@
 // Stored diary pages as they are told, after and next day apart. What their answers lead to is lockout.ts.
 
-import { diaryAnswersSchema, nextDayAnswersSchema, type DiaryAnswers, type NextDayAnswers } from './lockout/answers';
+import { diaryAnswersSchema, nextDayAnswersSchema, type DiaryAnswers, type NextDayAnswers } from '@/shared/values/diary-answers';
 
 export type StoredPage = {
   readonly id: string;

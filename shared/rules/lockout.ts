@@ -9,9 +9,9 @@ import {
   type LockoutCode,
   type RedFlag,
 } from '@/shared/values/codes';
+import type { DiaryAnswers, NextDayAnswers } from '@/shared/values/diary-answers';
 import { isBelow } from '@/shared/values/units';
 import { overCurrent, type Sample } from './delivered';
-import type { DiaryAnswers, NextDayAnswers } from './lockout/answers';
 
 export {
   diaryAnswersSchema,
@@ -19,7 +19,7 @@ export {
   skinChoices,
   type DiaryAnswers,
   type NextDayAnswers,
-} from './lockout/answers';
+} from '@/shared/values/diary-answers';
 export { effectKinds, redFlags } from '@/shared/values/codes';
 
 export type LockoutFacts = {

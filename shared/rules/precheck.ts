@@ -2,13 +2,18 @@
 // of it. An emergency answer acts at once, however much is open.
 
 import { precheckOutcomes, type PrecheckLockoutCode, type PrecheckOutcome } from '@/shared/values/codes';
+import { precheckAnswersSchema, type PrecheckAnswers } from '@/shared/values/precheck-answers';
 import { isoOf, parseInstant } from '@/shared/values/zone';
 import { holdUntilTomorrow } from './hold';
-import { precheckAnswersSchema, type PrecheckAnswers } from './precheck/answers';
 import { precheckFindings, type PrecheckContext, type PrecheckFinding } from './precheck/findings';
 import { precheckQuestions } from './precheck/questions';
 
-export { moodChoices, precheckAnswersSchema, type PrecheckAnswers, type PrecheckField } from './precheck/answers';
+export {
+  moodChoices,
+  precheckAnswersSchema,
+  type PrecheckAnswers,
+  type PrecheckField,
+} from '@/shared/values/precheck-answers';
 export type { PrecheckContext, PrecheckFinding } from './precheck/findings';
 export { precheckQuestions, type PrecheckQuestion } from './precheck/questions';
 

@@ -1,6 +1,6 @@
 // The diary's word for the skin as a number for charts: 0 is well, each step is worse. It orders; what follows is lockout.ts'.
 
-import { skinChoices } from './lockout/answers';
+import { skinChoices } from '@/shared/values/diary-answers';
 
 /** null for no answer, and for a word that is not one of the diary's. */
 export function skinRank(skin: string | null): number | null {

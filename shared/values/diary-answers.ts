@@ -1,7 +1,7 @@
-// The answers of the diary and of the next day's questions as sent: shape only. What follows is lockout.ts.
+// The answers of the diary and of the next day's questions as sent: shape only. What follows is shared/rules/lockout.ts.
 
 import { z } from 'zod';
-import { effectKinds, redFlags } from '@/shared/values/codes';
+import { effectKinds, redFlags } from './codes';
 
 const strength = z.number().int().min(0).max(10);
 export const skinChoices = ['ok', 'pink_fading', 'red', 'broken_or_blistered'] as const;

@@ -1,4 +1,4 @@
-// The answers of a pre-check as sent: shape only. What an answer means is findings.ts.
+// The answers of a pre-check as sent: shape only. What an answer means is shared/rules/precheck/findings.ts.
 
 import { z } from 'zod';
 

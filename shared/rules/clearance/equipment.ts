@@ -6,7 +6,7 @@ import { lastSession, type ClearanceContext } from './context';
 import { reason, when, type Reason } from './reason';
 
 /** Common practice; two sessions' worth is about a third of a small cell. */
-const leastBatteryPercent = 30;
+export const leastBatteryPercent = 30;
 
 export function sessionReasons(context: ClearanceContext): Reason[] {
   // Any open one counts, not only the newest: its dose is not known yet.

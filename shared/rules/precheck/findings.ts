@@ -2,8 +2,8 @@
 // findings is that of the codes.
 
 import type { PrecheckFindingCode, PrecheckOutcome, Waveform } from '@/shared/values/codes';
+import type { PrecheckAnswers } from '@/shared/values/precheck-answers';
 import { atLeast, isBelow } from '@/shared/values/units';
-import type { PrecheckAnswers } from './answers';
 
 export type PrecheckContext = {
   /** Unknown is read the strict way in all four. */

@@ -1,7 +1,7 @@
 // The questions of the pre-check as data: order, pages, kind of answer, which a protocol may not remove. No words.
 
 import type { Waveform } from '@/shared/values/codes';
-import { moodChoices, type PrecheckField } from './answers';
+import { moodChoices, type PrecheckField } from '@/shared/values/precheck-answers';
 
 export type PrecheckQuestion = {
   /** Stable, snake_case; `open` names it. */
