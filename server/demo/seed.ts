@@ -11,6 +11,10 @@ import type { House } from '@/server/house/open-house';
 import { act, Anything, personOf, WithId } from '@/server/demo/act';
 import { demoPassword } from '@/server/demo/demo-password';
 import { accept } from '@/server/demo/invite';
+import { playStory } from '@/server/demo/story';
+import { storyDays } from '@/server/demo/cast';
+import { daySeconds } from '@/server/demo/times';
+import { readOffset, setOffset } from '@/db/queries/clock';
 import { defaultProtocolSettings } from '@/shared/rules/protocol-defaults';
 
 export const administratorEmail = 'administrator@harrowmere.example';
@@ -78,6 +82,8 @@ async function inviteEverybody(house: House, siteIds: Record<string, string>): P
 
 export async function seedDemo(house: House, say: (line: string) => void): Promise<void> {
   const Ids = z.record(z.string(), z.string());
+  // The story begins in the past, so that it ends now. One day more than it is long: staff are there before the first person.
+  if ((await findDemoStep(house.transact.db, 'sites')) === null && (await readOffset(house.transact.db)) === 0) await setOffset(house.transact.db, -(storyDays + 1) * daySeconds);
   await firstAdministrator(house.transact, administratorEmail, demoPassword);
   const siteIds = await step(house, 'sites', Ids, () => {
     say('Demo: two sites, their protocols and staff');
@@ -85,4 +91,5 @@ export async function seedDemo(house: House, say: (line: string) => void): Promi
   });
   await step(house, 'protocols', Anything, () => signProtocols(house, siteIds));
   await step(house, 'staff', Anything, () => inviteEverybody(house, siteIds));
+  await playStory(house, siteIds, say);
 }
