@@ -152,7 +152,7 @@ export function makeTransact(client: Client, env: Env, outside: Outside = {}): T
               ...seen,
               contract: contract.name,
               status: contract.status ?? 200,
-              answer: isReplayed(contract) ? result : null,
+              answer: isReplayed(contract) ? result : {},
               createdAt: await tx.now(),
             });
           return result;
