@@ -5,7 +5,7 @@ import { listMarks } from '@/db/queries/course';
 import { cutPage, decodeCursor } from '@/db/queries/cursor';
 import { action, invalid, notFound } from '@/server/action';
 import { readSharedDiary as contract } from '@/shared/contracts/caregiver';
-import { diaryAnswersSchema } from '@/shared/rules/lockout';
+import { diaryAnswersSchema } from '@/shared/values/diary-answers';
 import { positionOf } from '@/shared/values/list-position';
 
 export const readSharedDiary = action(contract, async ({ actor, params, query }, tx) => {
