@@ -4,7 +4,7 @@
  */
 import { usePathname } from 'expo-router';
 import { useEffect, useRef } from 'react';
-import { Text as NativeText } from 'react-native';
+import type { Text as NativeText } from 'react-native';
 import { useTranslation } from 'react-i18next';
 import { PageAnchor } from '@/components/ui/page-controls';
 import { Text } from '@/components/ui/Text';
