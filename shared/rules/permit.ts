@@ -2,7 +2,7 @@
 
 import type { PermitExpiryCause, PermitReasonCode } from '@/shared/values/codes';
 import { minuteMilliseconds } from '@/shared/values/units';
-import { isTime, isZone, isoOf, parseInstant } from '@/shared/values/zone';
+import { isTime, isZone, isoOf } from '@/shared/values/zone';
 import { openHoursAt } from './hours';
 import { Known } from './known';
 
@@ -65,11 +65,11 @@ export const permitLifeMinutes = 30;
 /** Longest time from the pre-check's answers to the end of a permit given on them (own choice). */
 export const precheckToExpiryMinutes = 45;
 
-/**
- * The earliest of: 30 min after issue, 45 min after the pre-check's answers, the end of the present allowed hours, the
- * prescription's end. Of equals the first in this order is named. Outside the hours it ends at once.
- */
-export function permitExpiry(present: PermitPresentFacts | undefined, now: string): PermitExpiry {
+type Expiry =
+  | { readonly known: true; readonly end: number; readonly cause: PermitExpiryCause; readonly isOver: boolean }
+  | { readonly known: false; readonly facts: readonly string[] };
+
+function expiryOf(present: PermitPresentFacts | undefined, now: string): Expiry {
   const known = new Known();
   const instant = known.instant('now', now);
   const current = known.some('current', present);
@@ -94,8 +94,17 @@ export function permitExpiry(present: PermitPresentFacts | undefined, now: strin
     ['hours', openHoursAt(instant, { hoursFrom, hoursTo, zone })?.closesAt ?? instant],
     ['prescription', prescriptionEnd],
   ];
-  const [expiresBy, end] = ends.reduce((earliest, each) => (each[1] < earliest[1] ? each : earliest));
-  return { known: true, expiresAt: isoOf(end), expiresBy };
+  const [cause, end] = ends.reduce((earliest, each) => (each[1] < earliest[1] ? each : earliest));
+  return { known: true, end, cause, isOver: end <= instant };
+}
+
+/**
+ * The earliest of: 30 min after issue, 45 min after the pre-check's answers, the end of the present allowed hours, the
+ * prescription's end. Of equals the first in this order is named. Outside the hours it ends at once.
+ */
+export function permitExpiry(present: PermitPresentFacts | undefined, now: string): PermitExpiry {
+  const expiry = expiryOf(present, now);
+  return expiry.known ? { known: true, expiresAt: isoOf(expiry.end), expiresBy: expiry.cause } : expiry;
 }
 
 function answer(reasons: readonly PermitReasonCode[], known: Known): PermitAnswer {
@@ -177,14 +186,14 @@ export function mayIssue(
     if (state.facts.length > 0) return { ...state, isNewPermit: false };
     if (state.valid) return { valid: false, reasons: ['live_permit'], facts: [], isNewPermit: false };
   }
-  const expiry = permitExpiry(present, now);
+  const expiry = expiryOf(present, now);
   if (!expiry.known) return { valid: false, reasons: ['unknown_fact'], facts: expiry.facts, isNewPermit: false };
-  const { expiresAt, expiresBy } = expiry;
-  if ((parseInstant(expiresAt) ?? 0) <= (parseInstant(now) ?? 0)) {
-    const over: PermitReasonCode = expiresBy === 'hours' ? 'outside_hours' : 'permit_expired';
+  const { cause, end, isOver } = expiry;
+  if (isOver) {
+    const over: PermitReasonCode = cause === 'hours' ? 'outside_hours' : 'permit_expired';
     return { valid: false, reasons: [over], facts: [], isNewPermit: false };
   }
-  return { valid: true, reasons: [], facts: [], isNewPermit: true, expiresAt, expiresBy };
+  return { valid: true, reasons: [], facts: [], isNewPermit: true, expiresAt: isoOf(end), expiresBy: cause };
 }
 
 /**

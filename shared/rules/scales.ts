@@ -18,7 +18,7 @@ export type ScaleDefinition = {
   readonly source: string;
 };
 export type ScaleScore =
-  | { readonly error: 'wrong_count' | 'out_of_range' | 'unknown_scale' }
+  | { readonly error: 'wrong_count' | 'out_of_range' }
   | {
       readonly missing: readonly number[];
       readonly total: number | null;
@@ -156,7 +156,6 @@ function algorithmOf(answers: readonly (number | null)[]): 'none' | 'other' | 'm
 /** Answers in item order, null = not answered. Proration: sum × items / answered, rounded half up. */
 export function scoreScale(name: ScaleName, answers: readonly (number | null)[]): ScaleScore {
   const scale = scales[name];
-  if (scale === undefined) return { error: 'unknown_scale' };
   if (answers.length !== scale.items) return { error: 'wrong_count' };
   const given = answers.filter((answer) => answer !== null);
   if (!given.every((answer) => Number.isInteger(answer) && answer >= scale.min && answer <= scale.max)) {
