@@ -91,7 +91,11 @@ export function CourseStrip({ marks, size, label, onPressMark }: CourseStripProp
       }}
     >
       {weeksOf(marks).map((week) => (
-        <View key={week[0]?.number} role="none" style={{ flexDirection: 'row', flexWrap: 'wrap', flexShrink: 1, maxWidth: '100%', gap }}>
+        <View
+          key={week[0]?.number}
+          role="none"
+          style={{ flexDirection: 'row', flexWrap: 'wrap', flexShrink: 1, maxWidth: '100%', gap }}
+        >
           {week.map((mark) => (
             <View key={mark.number} role="listitem">
               {onPressMark ? (
