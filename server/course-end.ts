@@ -4,9 +4,8 @@ import type { Db } from '@/db/client';
 import { cancelOpenPlanned, countPlanned } from '@/db/queries/course-plan';
 import { closeCourse, lockCourse } from '@/db/queries/course-state';
 import { closePrescription, discardDrafts, findPrescriptionInForce } from '@/db/queries/prescription';
-import { closeMatter, openItem } from '@/db/queries/worklist';
+import { openItem } from '@/db/queries/worklist';
 import { courseHasEnded } from '@/shared/rules/course-end';
-import { secondSignatureMatter } from '@/shared/rules/prescription-signing';
 
 /** True when the course ended now: its prescription ends with it, nothing more is planned, and the worklist says so. */
 export async function closeCourseIfDone(db: Db, courseId: string, now: string): Promise<boolean> {
@@ -20,9 +19,7 @@ export async function closeCourseIfDone(db: Db, courseId: string, now: string): 
 
   await cancelOpenPlanned(db, courseId, now);
   await closePrescription(db, prescription.id, now, 'course_ended');
-  for (const id of await discardDrafts(db, courseId, now)) {
-    await closeMatter(db, course.participantId, secondSignatureMatter(id), now, 'discarded');
-  }
+  await discardDrafts(db, courseId, now);
   await closeCourse(db, courseId, now, 'finished');
   await openItem(db, {
     id: crypto.randomUUID(),

@@ -75,7 +75,12 @@ export async function closeMatter(
 }
 
 /** Closes the open rows about these prescriptions. */
-export async function closeItemsOfPrescriptions(db: Db, prescriptionIds: readonly string[], at: string, why: string): Promise<void> {
+export async function closeItemsOfPrescriptions(
+  db: Db,
+  prescriptionIds: readonly string[],
+  at: string,
+  why: string,
+): Promise<void> {
   if (prescriptionIds.length === 0) return;
   await db
     .update(worklistItem)

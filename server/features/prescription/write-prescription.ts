@@ -3,14 +3,12 @@
 import { findActiveCourse, insertCourse, lockCourse } from '@/db/queries/course-state';
 import { discardDrafts, findPrescriptionInForce, insertPrescription, wholeAmounts } from '@/db/queries/prescription';
 import { lockParticipantInReach } from '@/db/queries/reach';
-import { closeMatter } from '@/db/queries/worklist';
 import { action, notFound, refuse } from '@/server/action';
 import { contentHashOf } from '@/server/features/prescription/content-hash';
 import { judgeContent, refusalOf } from '@/server/features/prescription/judge-content';
 import { viewPrescription } from '@/server/features/prescription/view-prescription';
 import { writePrescription as contract } from '@/shared/contracts/prescription';
 import { chargeOf, minutesOn } from '@/shared/rules/dose';
-import { secondSignatureMatter } from '@/shared/rules/prescription-signing';
 import { endOfDay, isoOf } from '@/shared/values/zone';
 
 export const writePrescription = action(contract, async ({ actor, body }, tx) => {
@@ -35,9 +33,7 @@ export const writePrescription = action(contract, async ({ actor, body }, tx) =>
 
   const course = active ?? { id: crypto.randomUUID(), ...whose, createdAt: now };
   if (!active) await insertCourse(tx.db, course);
-  for (const id of await discardDrafts(tx.db, course.id, now)) {
-    await closeMatter(tx.db, participant.id, secondSignatureMatter(id), now, 'discarded');
-  }
+  await discardDrafts(tx.db, course.id, now);
   const draft = await insertPrescription(tx.db, {
     ...content,
     id: crypto.randomUUID(),
