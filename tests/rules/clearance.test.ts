@@ -360,8 +360,14 @@ describe('clearance', () => {
     expect(ask({ prescription: { status: 'none', dose: undefined, hoursFrom: undefined } }).reasons).toEqual([
       { code: 'prescription_unsigned', resolvedBy: 'clinician' },
     ]);
-    const without = { ...clearedFacts, prescription: { status: 'none' } } as const;
+    const without = { ...clearedFacts, prescription: { status: 'none' }, site: undefined } as const;
     expect(clearance(without, clearedAt).reasons.map(({ code }) => code)).toEqual(['prescription_unsigned']);
+  });
+
+  it('names each fact that is missing once, the highest missing step of its path only', () => {
+    const facts = { ...clearedFacts, prescription: undefined, site: undefined, device: undefined };
+    expect(clearance(facts, clearedAt).reasons.map(({ fact }) => fact)).toEqual(['prescription', 'site', 'device']);
+    expect(clearance({}, clearedAt).reasons.map(({ fact }) => fact)).not.toContain('prescription.min_gap_h');
   });
 
   it('names both when a screening is not complete and excludes already', () => {

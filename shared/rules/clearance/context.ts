@@ -33,6 +33,11 @@ export type ClearanceContext = {
   readonly sessions?: readonly PastSession[];
 };
 
+/** False only where it is known that there is no prescription yet: then nothing that it would say is asked. */
+export function isPrescribed({ facts }: ClearanceContext): boolean {
+  return facts.prescription?.status !== 'none';
+}
+
 function plusMinutes(instant: number | undefined, minutes: number | undefined): number | undefined {
   return instant === undefined || minutes === undefined ? undefined : instant + minutes * minuteMilliseconds;
 }

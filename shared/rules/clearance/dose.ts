@@ -5,7 +5,7 @@ import { isoOf } from '@/shared/values/zone';
 import type { LimitLayer, ReasonCode } from '@/shared/values/codes';
 import { ceilings } from '../ceilings';
 import { dayWindow, fitsUnder, weekWindow, type Counted } from '../rolling';
-import { allKnown, type ClearanceContext } from './context';
+import { allKnown, isPrescribed, type ClearanceContext } from './context';
 import { when, type Reason } from './reason';
 
 type Rolling = {
@@ -30,9 +30,7 @@ function rollingReason(now: number, { code, counted, planned, limit, window, ...
 }
 
 export function plannedDose({ facts, known }: ClearanceContext): { chargeCoulomb?: number; minutes?: number } {
-  const prescription = facts.prescription;
-  if (prescription === undefined || prescription.status === 'none') return {};
-  const dose = known.some('prescription.dose', prescription.dose);
+  const dose = known.some('prescription.dose', facts.prescription?.dose);
   return {
     chargeCoulomb: known.amount('prescription.dose.charge_C', dose?.chargeCoulomb),
     minutes: known.amount('prescription.dose.minutes', dose?.minutes),
@@ -40,6 +38,7 @@ export function plannedDose({ facts, known }: ClearanceContext): { chargeCoulomb
 }
 
 export function minutesReasons(context: ClearanceContext): Reason[] {
+  if (!isPrescribed(context)) return [];
   const { value: ceiling, source } = ceilings.minutesPerDay;
   const site = context.known.some('site', context.facts.site);
   const setLimit =
@@ -82,12 +81,14 @@ function chargeReasons(
 }
 
 export function charge24hReasons(context: ClearanceContext): Reason[] {
+  if (!isPrescribed(context)) return [];
   const site = context.known.some('site', context.facts.site);
   const limit = context.known.amount('site.max_24h_C', site?.maxCharge24hCoulomb);
   return chargeReasons(context, 'charge_24h', limit, dayWindow);
 }
 
 export function charge7dReasons(context: ClearanceContext): Reason[] {
+  if (!isPrescribed(context)) return [];
   const site = context.known.some('site', context.facts.site);
   const limit = context.known.amount('site.max_7d_C', site?.maxCharge7dCoulomb);
   return chargeReasons(context, 'charge_7d', limit, weekWindow);

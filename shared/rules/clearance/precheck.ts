@@ -4,7 +4,7 @@ import { precheckOutcomes } from '@/shared/values/codes';
 import { minuteMilliseconds } from '@/shared/values/units';
 import { isoOf, parseInstant } from '@/shared/values/zone';
 import { holdUntilTomorrow } from '../hold';
-import type { ClearanceContext } from './context';
+import { isPrescribed, type ClearanceContext } from './context';
 import { reason, when, type Reason } from './reason';
 
 /** Own choice. At exactly 30 min a pre-check is over. */
@@ -37,12 +37,11 @@ function holdReason(context: ClearanceContext, answeredAt: number | undefined): 
 }
 
 /** An assisted prescription, or anybody under 18, needs somebody beside them, whatever the prescription says. */
-function helperReasons({ facts, known, isMinor }: ClearanceContext): Reason[] {
-  const prescription = facts.prescription;
-  const isAssisted =
-    prescription === undefined || prescription.status === 'none'
-      ? undefined
-      : known.flag('prescription.assisted', prescription.isAssisted);
+function helperReasons(context: ClearanceContext): Reason[] {
+  const { facts, known, isMinor } = context;
+  const isAssisted = isPrescribed(context)
+    ? known.flag('prescription.assisted', facts.prescription?.isAssisted)
+    : undefined;
   if (facts.precheck === undefined) return [];
   const isPresent = known.flag('precheck.helper_present', facts.precheck.isHelperPresent);
   return when((isAssisted === true || isMinor === true) && isPresent === false, 'helper_absent');

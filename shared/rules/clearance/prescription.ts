@@ -2,7 +2,7 @@
 
 import { lockoutLevels } from '@/shared/values/codes';
 import { isoOf } from '@/shared/values/zone';
-import type { ClearanceContext } from './context';
+import { isPrescribed, type ClearanceContext } from './context';
 import { reason, when, type Reason } from './reason';
 
 export function prescriptionReasons({ facts, known, now }: ClearanceContext): Reason[] {
@@ -26,11 +26,11 @@ export function prescriptionReasons({ facts, known, now }: ClearanceContext): Re
   ];
 }
 
-export function courseReasons({ facts, known }: ClearanceContext): Reason[] {
-  const prescription = facts.prescription;
-  if (prescription === undefined || prescription.status === 'none') return [];
-  const value = known.amount('prescription.sessions_done', prescription.sessionsDone);
-  const limit = known.amount('prescription.sessions_total', prescription.sessionsTotal);
+export function courseReasons(context: ClearanceContext): Reason[] {
+  if (!isPrescribed(context)) return [];
+  const { facts, known } = context;
+  const value = known.amount('prescription.sessions_done', facts.prescription?.sessionsDone);
+  const limit = known.amount('prescription.sessions_total', facts.prescription?.sessionsTotal);
   const isDone = value !== undefined && limit !== undefined && value >= limit;
   return when(isDone, 'course_complete', { value, limit, layer: 'prescription' });
 }

@@ -5,12 +5,8 @@ import { hourMilliseconds, isBelow } from '@/shared/values/units';
 import { isTime, isoOf, localDate, nextMidnight } from '@/shared/values/zone';
 import { nextOpening, openHoursAt } from '../hours';
 import { fitsUnder, weekWindow } from '../rolling';
-import { allKnown, lastSession, type ClearanceContext } from './context';
+import { allKnown, isPrescribed, lastSession, type ClearanceContext } from './context';
 import { when, type Reason } from './reason';
-
-function isPrescribed({ facts }: ClearanceContext): boolean {
-  return facts.prescription !== undefined && facts.prescription.status !== 'none';
-}
 
 export function hoursReasons(context: ClearanceContext): Reason[] {
   if (!isPrescribed(context)) return [];
