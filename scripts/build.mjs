@@ -48,6 +48,7 @@ export async function buildServer(say) {
       target: 'node20',
       format: 'cjs',
       sourcemap: 'linked',
+      sourcesContent: false,
       logLevel: 'error',
       // One file starts in a third of the time that the many files of the libraries take. sharp holds a compiled part and
       // stays where it is; pg asks for pg-native only if somebody installed it.

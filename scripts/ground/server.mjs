@@ -36,10 +36,9 @@ function keepLogSmall() {
 export function launchServer(env, { command = [process.execPath, '--enable-source-maps', serverBundle] } = {}) {
   keepLogSmall();
   const [program, ...args] = command;
+  // Out of reach of the terminal's Ctrl-C: it would hear it twice, from the terminal and from us, and end at once.
   const child = start(program, args, {
-    cwd: root,
-    stdio: ['ignore', 'pipe', 'inherit'],
-    env: { ...process.env, ...env },
+    ...{ cwd: root, stdio: ['ignore', 'pipe', 'inherit'], env: { ...process.env, ...env }, detached: true },
   });
   createInterface({ input: child.stdout }).on('line', forward);
   beforeEnd(() => stopChild(child));

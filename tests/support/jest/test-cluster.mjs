@@ -1,6 +1,6 @@
 // What: the PostgreSQL of a Jest run: started when the first project needs it, with the migrated template to copy from.
 // Must not: start a second one when `npm test` already has (it says so by RAMPWELL_TEST_PORT).
-import { mkdirSync } from 'node:fs';
+import { mkdirSync, rmSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import path from 'node:path';
 import { build } from 'esbuild';
@@ -26,7 +26,11 @@ async function migrate(databaseUrl) {
     packages: 'external',
     logLevel: 'error',
   });
-  await createRequire(import.meta.url)(outfile).migrate(databaseUrl);
+  try {
+    await createRequire(import.meta.url)(outfile).migrate(databaseUrl);
+  } finally {
+    rmSync(outfile, { force: true });
+  }
 }
 
 function admin(sql) {
