@@ -32,6 +32,8 @@ export async function openQueue(databaseUrl: string, onError: (error: Error) => 
     async work(work) {
       await boss.work(name, { pollingIntervalSeconds: pollSeconds, batchSize: 1 }, work);
       await boss.schedule(name, '* * * * *');
+      // What came due while nothing ran does not wait for the full minute.
+      await boss.send(name, {});
     },
     async wake(execute) {
       await boss.send(name, {}, { db: { executeSql: (text, values) => execute(text, values) } });
