@@ -122,8 +122,6 @@ export const pill = 999;
 export const stroke = { hair: 1, firm: 2, bold: 4, edge: 6 } as const;
 /** Smallest height of what is touched, in px: the participant's screens, and the panel worked with a pointer. */
 export const touch = { reading: 48, panel: 40, scale: 44 } as const;
-/** Changes of state take at most this long; the style sheet switches it off for those who ask for less motion. */
-export const motionMs = 160;
 /** Below this width of the window a wide screen takes the shape of a phone, px. */
 export const phoneBelow = 768;
 /** Width of the reading column and of the panel's rail, in rem. */
