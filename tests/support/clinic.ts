@@ -47,13 +47,13 @@ export interface Clinic {
   close(): Promise<void>;
 }
 
-const secret = 'a secret that only these tests have, long enough';
+export const secretOfTests = 'a secret that only these tests have, long enough';
 
 export async function openClinic(): Promise<Clinic> {
   const name = await createDatabase();
   const url = databaseUrl(name);
   const client = connect(url, 4, () => undefined);
-  const env = readEnv({ DATABASE_URL: url, DEMO: '1', SECRET: secret });
+  const env = readEnv({ DATABASE_URL: url, DEMO: '1', SECRET: secretOfTests });
   const transact = makeTransact(client, env);
   const { db } = client;
   let ahead = 0;
