@@ -73,7 +73,7 @@ describe.each([
 
 describe('the page before the program', () => {
   const sheet = readFileSync(path.resolve(__dirname, '../../public/rampwell.css'), 'utf8');
-  const blocks = [...sheet.matchAll(/:root[^{]*\{([^}]*)\}/g)].map(([, body = '']) =>
+  const blocks = [...sheet.matchAll(/:root[^{]*\{([^}]*--surface[^}]*)\}/g)].map(([, body = '']) =>
     Object.fromEntries([...body.matchAll(/--([a-z-]+):\s*(#[0-9a-f]{6})/g)].map(([, name, value]) => [name, value])),
   );
   const variables = (theme: Colours) => ({

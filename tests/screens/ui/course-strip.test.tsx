@@ -34,14 +34,23 @@ const marks: CourseMark[] = states.map((state, index) => ({
 }));
 
 describe('the course strip', () => {
-  test.each(sizes)('at size %s gives every mark its text and itself one sentence', async (size) => {
-    const { container } = render(<CourseStrip marks={marks} size={size} label="9 sessions in all." />);
+  test.each(sizes)('at size %s gives every mark its text and itself one sentence', (size) => {
+    render(<CourseStrip marks={marks} size={size} label="9 sessions in all." />);
     const strip = screen.getByRole('list', { name: '9 sessions in all.' });
     expect(
       within(strip)
         .getAllByRole('img')
         .map((mark) => mark.getAttribute('aria-label')),
     ).toEqual(marks.map((mark) => mark.label));
+  });
+
+  test('has no fault that axe finds, pressed or only looked at', async () => {
+    const { container } = render(
+      <>
+        <CourseStrip marks={marks} size="row" label="9 sessions in all." />
+        <CourseStrip marks={marks} size="page" label="9 sessions to press." onPressMark={() => undefined} />
+      </>,
+    );
     expect(await axe(container)).toHaveNoViolations();
   });
 

@@ -46,14 +46,14 @@ test('begins at its title where there is no field, so that it is read', async ()
 test('does not let the tab key out', async () => {
   const user = await opened(<Signing withField />);
   const dialog = screen.getByRole('dialog');
-  for (let press = 0; press < 8; press += 1) {
+  const places: boolean[] = [];
+  // Five stops in the dialog, and the two brackets round it that send the focus back in.
+  for (let press = 0; press < 7; press += 1) {
     await user.tab();
-    const brackets = [...document.querySelectorAll('[role="none"][tabindex="0"]')];
-    expect(
-      dialog.contains(document.activeElement) || brackets.some((bracket) => bracket === document.activeElement),
-    ).toBe(true);
-    expect(document.activeElement).not.toBe(screen.getByRole('button', { name: 'Sign' }));
+    const isBracket = document.activeElement?.matches('[role="none"][tabindex="0"]') ?? false;
+    places.push(isBracket || dialog.contains(document.activeElement));
   }
+  expect(places).toEqual(places.map(() => true));
 });
 
 test('closes by Escape and gives the focus back', async () => {
