@@ -21,6 +21,8 @@ export interface Format {
   since(instant: string, now: string): string;
   /** "1.85", with the language's own signs. */
   number(value: number, digits?: number): string;
+  /** "2.0": always so many digits, for a number that moves while it is read. */
+  fixed(value: number, digits: number): string;
   /** "94 %" of a fraction. */
   percent(fraction: number): string;
 }
@@ -60,6 +62,8 @@ export function formatIn(language: string, zone: string): Format {
       return unit(Math.floor(passed / day), 'day');
     },
     number: (value, digits = 2) => new Intl.NumberFormat(language, { maximumFractionDigits: digits }).format(value),
+    fixed: (value, digits) =>
+      new Intl.NumberFormat(language, { minimumFractionDigits: digits, maximumFractionDigits: digits }).format(value),
     percent: (fraction) => new Intl.NumberFormat(language, { style: 'percent', maximumFractionDigits: 0 }).format(fraction),
   };
 }

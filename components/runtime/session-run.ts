@@ -175,9 +175,13 @@ export class SessionRun {
     return this.device?.resume() ?? false;
   }
 
-  /** The stimulator first, always: no record, network or store stands before it. */
+  /**
+   * The stimulator first, always: no record, network or store stands before it. Where this page does not have the stimulator (yet), it
+   * gets it and stops then.
+   */
   stop(): void {
-    this.device?.stop('button');
+    if (this.device) return this.device.stop('button');
+    void this.open('take').then(() => this.device?.stop('button'));
   }
 
   /** Something is felt. Strong pain at a pad stops the run. True if it did. */

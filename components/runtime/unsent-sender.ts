@@ -4,6 +4,7 @@
 import { sendEvents } from '@/shared/contracts/permit';
 import { addPhoto, writeDiary } from '@/shared/contracts/session';
 import type { AnswerOf } from '@/shared/contracts/contract';
+import type { Problem } from '@/shared/contracts/problem';
 import { ApiProblem, callDoor } from './api';
 import { phoneStore, type AsideRow, type EventRow, type PhoneStore } from './phone-store';
 
@@ -175,8 +176,21 @@ export class UnsentSender {
       if (answer.refused.some((one) => one.code === tooEarly)) throw new Error('ahead of the server');
     } catch (problem) {
       if (!(problem instanceof ApiProblem) || isForLater(problem)) throw problem;
-      await this.settle(store, rows, () => problem.problem.code);
+      await this.settleRefused(store, rows, problem.problem);
     }
+  }
+
+  /** A whole batch refused: what is named is put aside, or kept if it is only early; the others are tried again without it. */
+  private async settleRefused(store: PhoneStore, rows: readonly EventRow[], problem: Problem): Promise<void> {
+    const named = new Map(
+      (problem.fields ?? []).map((field) => [Number(/^(?:body\.)?events\.(\d+)/.exec(field.path)?.[1] ?? -1), field.code]),
+    );
+    const isNamed = rows.some((_row, place) => named.has(place));
+    await this.settle(store, rows, (row) => {
+      const code = isNamed ? named.get(rows.indexOf(row)) : problem.code;
+      return code === undefined || code === `event_${tooEarly}` ? 'keep' : code;
+    });
+    if ([...named.values()].includes(`event_${tooEarly}`)) throw new Error('ahead of the server');
   }
 
   private async settle(store: PhoneStore, rows: readonly EventRow[], fateOf: (row: EventRow) => string): Promise<void> {

@@ -2,7 +2,7 @@
  * The end of the pre-check: go on, go on with care, wait, or get help, and what happens next. It shows what the server made of the
  * answers and adds nothing to it.
  */
-import { useRouter, type Href } from 'expo-router';
+import { useRouter } from 'expo-router';
 import { useTranslation } from 'react-i18next';
 import { EmergencyAdvice } from '@/components/features/session/pictures/EmergencyAdvice';
 import { ParticipantShell } from '@/components/layout/ParticipantShell';
@@ -61,7 +61,7 @@ export function OutcomePage({ clearance, view, onAgain }: OutcomePageProps) {
         </Card>
       ) : null}
       {outcome === 'hold_review' ? (
-        <Link href={`tel:${site.phone.replace(/[^+0-9]/g, '')}` as Href} external>
+        <Link href={`tel:${site.phone.replace(/[^+0-9]/g, '')}`} external>
           {t('outcome.call', { name: site.name, phone: site.phone })}
         </Link>
       ) : null}

@@ -9,10 +9,22 @@ import { Button } from '@/components/ui/Button';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
 
-export function DemoControls({ session, speed, position }: { session: SessionRun; speed: number; position: string | undefined }) {
+export function DemoControls({
+  session,
+  speed,
+  position,
+}: {
+  session: SessionRun;
+  speed: number;
+  position: string | undefined;
+}) {
   const { t } = useTranslation('session');
   return (
-    <View role="group" aria-label={t('demo.group')} style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[1] }}>
+    <View
+      role="group"
+      aria-label={t('demo.group')}
+      style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[1] }}
+    >
       <Text size="fine" tone="muted">
         {t('demo.speed', { speed })}
       </Text>

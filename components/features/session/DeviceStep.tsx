@@ -64,7 +64,12 @@ export function DeviceStep({ setUp, clearance, device }: DeviceStepProps) {
         </Notice>
       )}
       {mayUse ? null : (
-        <Notice tone="stop" title={t(device === null ? 'none.title' : 'recalled.title')} announce="polite" actions={call}>
+        <Notice
+          tone="stop"
+          title={t(device === null ? 'none.title' : 'recalled.title')}
+          announce="polite"
+          actions={call}
+        >
           {t(device === null ? 'none.text' : 'recalled.text')}
         </Notice>
       )}

@@ -41,7 +41,10 @@ export function FeelPanel({ onFeel, onRaise, onClose }: FeelPanelProps) {
     );
   }
   return (
-    <Card heading={t('feel.what')} aside={<Button kind="quiet" size="small" label={t('feel.close')} onPress={onClose} />}>
+    <Card
+      heading={t('feel.what')}
+      aside={<Button kind="quiet" size="small" label={t('feel.close')} onPress={onClose} />}
+    >
       <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: space[2] }}>
         {kinds.map((one) => (
           <Button key={one} kind="plain" label={t(`diary:effect.${one}`)} onPress={() => setKind(one)} />

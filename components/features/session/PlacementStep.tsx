@@ -32,7 +32,9 @@ export function PlacementStep({ setUp, clearance }: { setUp: SetUp; clearance: C
   const isWhole = electrodes.length > 0 && items.every(({ id }) => setUp.placed.includes(id));
   const tick = (id: string, isDone: boolean) =>
     setUp.setPlaced(isDone ? [...setUp.placed, id] : setUp.placed.filter((one) => one !== id));
-  const label = electrodes.map(({ position, polarity }) => t(`placing.${polarity}`, { place: placeName(position) })).join(' ');
+  const label = electrodes
+    .map(({ position, polarity }) => t(`placing.${polarity}`, { place: placeName(position) }))
+    .join(' ');
   const canBeMirrored = electrodes.every(({ position }) => placeFromFront(position) !== undefined);
   return (
     <StepShell

@@ -63,13 +63,15 @@ export function RunPage({ view, run, device, session }: RunPageProps) {
   return (
     <ParticipantShell
       title={words.title}
+      titleSize="huge"
       lead={words.line}
       date={t('run.number', { number: run.sessionNumber, total: run.sessionsTotal })}
       headEnd={isOffline ? <Tag bare label={t('run.offline')} /> : undefined}
       hideTabs
       footer={picture.isOver ? <Over run={run} session={session} /> : <Stop picture={picture} session={session} />}
     >
-      <Live hidden>{words.title}</Live>
+      {/* Each minute and each change; the last minute is said once, not second by second. */}
+      <Live hidden>{picture.sentence.key === 'seconds' ? t('run.lastMinute') : words.title}</Live>
       {run.advice ? (
         <EmergencyAdvice
           code={run.advice}
@@ -100,8 +102,12 @@ export function RunPage({ view, run, device, session }: RunPageProps) {
             <Button kind="secondary" grow label={t('run.feel')} expanded={false} onPress={() => setFeelOpen(true)} />
           )}
           <Live>{noted ? <Text tone="muted">{noted}</Text> : null}</Live>
-          {picture.mayGoOn ? <GoOn session={session} contactIsGood={contacts.every(({ grade }) => grade === 'good')} /> : null}
-          {picture.mayPause ? <Button kind="plain" grow label={t('run.pause')} onPress={() => session.pause()} /> : null}
+          {picture.mayGoOn ? (
+            <GoOn session={session} contactIsGood={contacts.every(({ grade }) => grade === 'good')} />
+          ) : null}
+          {picture.mayPause ? (
+            <Button kind="plain" grow label={t('run.pause')} onPress={() => session.pause()} />
+          ) : null}
           <Switch label={t('run.cues')} value={cues.isOn} onChange={cues.change} />
           {me?.demo ? <DemoControls session={session} speed={view.speed} position={contacts[0]?.position} /> : null}
         </>

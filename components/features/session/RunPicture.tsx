@@ -39,7 +39,13 @@ export function RunTrapezoid({ picture, session }: { picture: RunPicture; sessio
 }
 
 /** Good contact is one quiet line each; anything else says what to do. */
-export function RunContacts({ contacts, onAttended }: { contacts: readonly ElectrodeContact[]; onAttended(position: string): void }) {
+export function RunContacts({
+  contacts,
+  onAttended,
+}: {
+  contacts: readonly ElectrodeContact[];
+  onAttended(position: string): void;
+}) {
   const placeName = usePlaceName();
   if (contacts.some(({ grade }) => grade !== 'good')) {
     return (

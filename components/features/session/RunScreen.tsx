@@ -47,7 +47,9 @@ export function RunScreen() {
     );
   }
   if (session === null || view.run === null || !device) {
-    const toToday = <Button size="large" grow label={t('run.toToday')} onPress={() => router.replace('/today' satisfies Href)} />;
+    const toToday = (
+      <Button size="large" grow label={t('run.toToday')} onPress={() => router.replace('/today' satisfies Href)} />
+    );
     return (
       <ParticipantShell title={t('run.none')} tab="today" footer={toToday}>
         <EmptyState title={t('run.noneWhat')}>{t('run.noneText')}</EmptyState>

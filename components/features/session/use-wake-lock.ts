@@ -16,12 +16,13 @@ export function useWakeLock(isWanted: boolean): void {
         // Low battery or the person's own setting: the screen may sleep.
       }
     };
-    void take();
+    const onShown = () => void take();
+    onShown();
     // The browser takes it away whenever the page is hidden.
-    document.addEventListener('visibilitychange', take);
+    document.addEventListener('visibilitychange', onShown);
     return () => {
       isGone = true;
-      document.removeEventListener('visibilitychange', take);
+      document.removeEventListener('visibilitychange', onShown);
       void lock?.release().catch(() => undefined);
     };
   }, [isWanted]);
