@@ -41,16 +41,17 @@ export function makeRunner(
     const tried = new Set<string>();
     for (let pass = 0; pass < passesMost; pass += 1) {
       const before = done;
-      for (const job of table) done += await runOne(job, tried);
+      const now = await transact.now();
+      for (const job of table) done += await runOne(job, now, tried);
       done += await delivery.deliverDue();
       if (done === before) break;
     }
     return done;
   }
 
-  async function runOne(job: Job, tried: Set<string>): Promise<number> {
+  async function runOne(job: Job, now: string, tried: Set<string>): Promise<number> {
     let done = 0;
-    for (const id of await job.listDue(db, await transact.now())) {
+    for (const id of await job.listDue(db, now)) {
       const name = `${job.name}:${id}`;
       if (tried.has(name)) continue;
       tried.add(name);

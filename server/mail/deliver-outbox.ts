@@ -62,7 +62,7 @@ export function makeDelivery(
       let closed = 0;
       for (;;) {
         const at = await now();
-        const rows = await client.transaction((db) => claimOutbox(db, at, later(at, heldMilliseconds), batch));
+        const rows = await claimOutbox(client.db, at, later(at, heldMilliseconds), batch);
         for (const row of rows) if (await deliver(row, transport)) closed += 1;
         if (rows.length < batch) return closed;
       }
