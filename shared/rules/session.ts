@@ -6,6 +6,7 @@ import { chargeOf } from './dose/arithmetic';
 import type { TrapezoidFacts } from './dose/facts';
 import { mostPauseSeconds, runUntil, type Run } from './session/run';
 
+export type { SessionEventWord } from '@/shared/values/codes';
 export { contactGraceSeconds, mostPauses, mostPauseSeconds, mostStopRampSeconds } from './session/run';
 
 /** Seconds since the start of the ramp up on one monotonic clock, and the word. */

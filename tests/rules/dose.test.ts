@@ -96,6 +96,14 @@ describe('judgeDose', () => {
     expect(rowOf('gap', {}, { routineGapHours: 24 })).toMatchObject({ tier: 'second_signature', layer: 'site' });
   });
 
+  it('cites the site’s protocol for the site’s own rows, and a paper or an own choice for the shipped ones', () => {
+    expect(rowOf('area')?.source).toBe('Bikson, Datta, Elwassif 2009');
+    expect(rowOf('area', {}, { routineAreaSquareCentimetre: 30 })?.source).toBe('site protocol');
+    expect(rowOf('day_minutes')?.source).toBe('Antal et al. 2017, 2026');
+    expect(rowOf('day_minutes', {}, { mostMinutesPerDay: 50 })?.source).toBe('site protocol');
+    expect(rowOf('gap')?.source).toBe('own choice');
+  });
+
   it('never lets a site raise what is compiled in', () => {
     const strong = { amplitude: { valueMilliamp: 4.2, meaning: 'peak' } } as const;
     expect(rowOf('current', strong, { mostCurrentMilliamp: 9 })).toMatchObject({

@@ -100,6 +100,27 @@ describe('the form of a case', () => {
     expect(answer.known ? '' : answer.problems.join()).toContain('shoe_size');
   });
 
+  it('answers a case of which nothing is given, as refused or open', () => {
+    const outcomeOf = (answer: WorkedAnswer) => (answer.known ? answer.outcome : {});
+    expect(outcomeOf(answerRuleCase('dose', {}))).toMatchObject({ verdict: 'refuse' });
+    expect(outcomeOf(answerRuleCase('clearance', {}, '2026-05-12T16:00:00Z'))).toMatchObject({ allowed: false });
+    expect(outcomeOf(answerRuleCase('precheck', {}))).toMatchObject({ complete: false, outcome: null });
+    expect(outcomeOf(answerRuleCase('permit', { ask: { type: 'start' } }))).toMatchObject({ valid: false });
+    expect(outcomeOf(answerRuleCase('permit', { ask: { type: 'release' } }))).toEqual({ state: 'reserved' });
+    expect(outcomeOf(answerRuleCase('lockout', {}))).toMatchObject({ effects: [] });
+  });
+
+  it('merges a patch as RFC 7396 says: objects into anything, null away, lists whole', () => {
+    expect(mergePatch({ a: 'b', c: { d: 'e', f: 'g' } }, { a: 'z', c: { f: null } })).toEqual({
+      a: 'z',
+      c: { d: 'e' },
+    });
+    expect(mergePatch({ a: [1, 2] }, { a: [3] })).toEqual({ a: [3] });
+    expect(mergePatch(['a'], { b: 1 })).toEqual({ b: 1 });
+    expect(mergePatch({ a: 1 }, ['c'])).toEqual(['c']);
+    expect(mergePatch({}, { a: { bb: { ccc: null } } })).toEqual({ a: { bb: {} } });
+  });
+
   it('names a kind that the engine does not know', () => {
     expect(answerRuleCase('horoscope', {})).toEqual({ known: false, problems: ['kind: horoscope is not known'] });
     expect(answerNumberCase('horoscope', {})).toEqual({ known: false, problems: ['kind: horoscope is not known'] });
