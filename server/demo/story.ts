@@ -51,6 +51,13 @@ async function arrive(story: Story, member: CastMember, index: number): Promise<
   if (member.fate !== 'training') await prescribe(story, member, person);
 }
 
+/** People do not wait for each other: so many act at once (own choice; the pool has fifteen connections). */
+const atOnce = 6;
+
+async function together<T>(items: readonly T[], work: (item: T) => Promise<void>): Promise<void> {
+  for (let from = 0; from < items.length; from += atOnce) await Promise.all(items.slice(from, from + atOnce).map(work));
+}
+
 const hasCourse = ({ fate }: CastMember) => fate !== 'invited' && fate !== 'training' && fate !== 'second_signature';
 
 /** Pages and holds of the day are taken, so that nobody is paged for ever; what came last stays open for whoever opens the demo. */
@@ -67,16 +74,16 @@ async function takePages(story: Story): Promise<void> {
 
 async function playSessions(story: Story, members: readonly CastMember[], day: number): Promise<void> {
   const begun: { member: CastMember; session: Begun }[] = [];
-  for (const member of members) {
+  await together(members, async (member) => {
     const person = story.people.get(member.name);
-    if (!person) continue;
+    if (!person) return;
     await renewSupplies(story, member, person);
     const session = await attempt(story, member, () => beginSession(story, member, person, day));
     if (session) begun.push({ member, session });
-  }
+  });
   if (begun.length === 0) return;
   await story.house.runner.moveClock(sessionSeconds);
-  for (const { member, session } of begun) await attempt(story, member, () => finishSession(story, member, session));
+  await together(begun, async ({ member, session }) => void (await attempt(story, member, () => finishSession(story, member, session))));
   await takePages(story);
 }
 
@@ -86,9 +93,8 @@ async function playDay(story: Story, day: number): Promise<void> {
   const running = cast.filter((member) => hasCourse(member) && member.sinceDays >= day && story.people.has(member.name));
   if (day > 0) {
     await clockTo(story, day * daySeconds + 2 * earlierSeconds);
-    for (const [index, member] of cast.entries()) {
-      if (member.sinceDays === day && !story.people.has(member.name)) await attempt(story, member, () => arrive(story, member, index));
-    }
+    const arriving = [...cast.entries()].filter(([, member]) => member.sinceDays === day && !story.people.has(member.name));
+    await together(arriving, async ([index, member]) => void (await attempt(story, member, () => arrive(story, member, index))));
   }
   const present = cast.filter((member) => hasCourse(member) && member.sinceDays >= day && story.people.has(member.name));
   await clockTo(story, day * daySeconds + earlierSeconds);
@@ -96,10 +102,10 @@ async function playDay(story: Story, day: number): Promise<void> {
   if (day === 0) return;
   await clockTo(story, day * daySeconds);
   await playSessions(story, present.filter((member) => !isDoneToday(member)), day);
-  for (const member of present) {
+  await together(present, async (member) => {
     const person = story.people.get(member.name);
     if (person) await attempt(story, member, () => afterwards(story, member, person, day));
-  }
+  });
 }
 
 /** Plays the whole story once, from the first enrolment to the present. */
