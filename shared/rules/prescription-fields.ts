@@ -59,6 +59,11 @@ function limitOf(row: DoseRow): number | undefined {
   return row.siteLimit ?? row.ceiling;
 }
 
+/** Millionths are as fine as any limit here; the rest is the last bit of a product. */
+function told(fact: number | string): number | string {
+  return typeof fact === 'number' ? Math.round(fact * 1_000_000) / 1_000_000 : fact;
+}
+
 /** One field a refused row: value, limit, unit, layer, source. Facts that the row does not know are left out. */
 export function overLimitFields(judgement: DoseJudgement, dose: MontageFacts): OverLimitField[] {
   return judgement.rows
@@ -73,7 +78,7 @@ export function overLimitFields(judgement: DoseJudgement, dose: MontageFacts): O
         fact: row.fact,
       };
       const facts: Record<string, string | number> = {};
-      for (const [name, fact] of Object.entries(all)) if (fact !== undefined && fact !== '') facts[name] = fact;
+      for (const [name, fact] of Object.entries(all)) if (fact !== undefined && fact !== '') facts[name] = told(fact);
       return { path: pathOf(row, dose), code: row.quantity, facts };
     });
 }

@@ -308,6 +308,7 @@ describe('amending', () => {
     const course = await clinic.call(oona, readCourse, { params: { courseId: one.courseId } });
     expect(course.marks).toHaveLength(20);
     expect(course.marks[0]).toMatchObject({ plannedSessionId: running.plannedSessionId, state: 'running' });
+    expect(await count('planned_session where id = $1 and closed_at is null', running.plannedSessionId)).toBe(1);
     const days = course.marks.map(({ windowFrom }) => windowFrom.slice(0, 10));
     expect(new Set(days).size).toBe(20);
   });

@@ -70,6 +70,11 @@ describe('a refused dose', () => {
     ]);
   });
 
+  it('tells amounts without the noise of a product', () => {
+    const [field] = fieldsOf({ intensityMilliamp: 3.3, holdSeconds: 2310.1 });
+    expect(field).toMatchObject({ code: 'charge', facts: { value: 7.72233, limit: 7.2, unit: 'C' } });
+  });
+
   it('points at hold, gap and sessions a day', () => {
     expect(fieldsOf({ holdSeconds: 2400, intensityMilliamp: 1 }).map(({ path, code }) => [path, code])).toEqual([
       ['dose.holdSeconds', 'minutes'],
