@@ -46,6 +46,8 @@ export function RoleGate() {
   const template = `/${segments.filter((segment) => !segment.startsWith('(')).join('/')}`;
   const door = screens.find((screen) => screen.path === template);
   if (!door?.who.includes(me.account.role)) return <Redirect href={firstPageOf(me.account.role)} />;
+  // Staff without a second factor, where the house asks for one, can do nothing but turn it on.
+  if (me.secondFactor.required && !me.secondFactor.enabled && template !== '/account') return <Redirect href="/account" />;
   return (
     <ShellAccountProvider account={account}>
       <Slot />

@@ -4,11 +4,12 @@
  */
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
 import { Slot } from 'expo-router';
-import { useState } from 'react';
+import { useEffect, useState } from 'react';
 import { I18nextProvider } from 'react-i18next';
 import { SafeAreaProvider } from 'react-native-safe-area-context';
 import { i18n } from '@/components/runtime/i18n';
 import { ApiProblem } from '@/components/runtime/api';
+import { keepPages } from '@/components/runtime/offline';
 import { keepSettings, keptSettings } from '@/components/runtime/settings';
 import { ThemeProvider } from '@/components/ui/theme';
 import { ToastProvider } from '@/components/ui/Toast';
@@ -36,6 +37,7 @@ export function Root() {
       }),
   );
   const [settings] = useState(keptSettings);
+  useEffect(() => void keepPages(), []);
   return (
     <QueryClientProvider client={queries}>
       <I18nextProvider i18n={i18n}>
