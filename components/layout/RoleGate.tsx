@@ -9,6 +9,7 @@ import { PublicShell } from '@/components/layout/PublicShell';
 import { railOf } from '@/components/layout/rail-of';
 import { ShellAccountProvider, type ShellAccount } from '@/components/layout/shell-account';
 import { firstPageOf, useMeState, useSignOut } from '@/components/runtime/me';
+import { useSessionRun } from '@/components/runtime/use-session-run';
 import { FailedState, LoadingState } from '@/components/ui/States';
 import { screens } from '@/shared/contracts/screens';
 import { isStaffRole } from '@/shared/values/roles';
@@ -32,6 +33,8 @@ export function RoleGate() {
   const segments = useSegments();
   const signOut = useSignOut();
   const me = here.state === 'signed_in' ? here.me : null;
+  // A session that runs on this phone is found again on whichever page opens first.
+  useSessionRun();
   const account = useMemo(() => (me ? shellAccountOf(me, () => void signOut()) : {}), [me, signOut]);
 
   if (here.state === 'signed_out') return <Redirect href={`/sign-in?next=${encodeURIComponent(pathname)}` as Href} />;
