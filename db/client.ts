@@ -19,6 +19,13 @@ export interface Client {
 }
 
 /**
+ * Fifty who ask for the same thing at once wait for each other's lock; on a busy machine that is many seconds, and each of them must get
+ * an answer. Beyond this something hangs (own choices).
+ */
+const waitForConnectionMilliseconds = 20_000;
+const statementMilliseconds = 60_000;
+
+/**
  * Opens a pool. A connection that breaks is replaced at the next use, so a restart of PostgreSQL needs no restart of the server.
  * @param url postgres://…
  * @param maxConnections most connections of this process
@@ -28,8 +35,8 @@ export function connect(url: string, maxConnections: number, onError: (error: Er
   const pool = new pg.Pool({
     connectionString: url,
     max: maxConnections,
-    connectionTimeoutMillis: 3000,
-    statement_timeout: 15_000,
+    connectionTimeoutMillis: waitForConnectionMilliseconds,
+    statement_timeout: statementMilliseconds,
     application_name: 'rampwell',
     options: '-c timezone=UTC',
   });
