@@ -106,8 +106,27 @@ async function amend(story: Story, member: CastMember, person: Enrolled): Promis
   const { course } = await act(story.house, readParticipant, await clinicianOf(story, member), { params: { participantId: person.id } }, Course);
   if (!course?.prescriptionId) return;
   await tidy(story, member, person);
+  await lift(story, member, person);
   const reason = 'Headache after two sessions; the dose is lowered and looked at again.';
   await prescribe(story, member, person, { intensityMilliamp: 1.5, amendsId: course.prescriptionId, reason });
+}
+
+/** The hold that the rising headache opened ends by the clinician's decision. */
+async function lift(story: Story, member: CastMember, person: Enrolled): Promise<void> {
+  const clinician = await clinicianOf(story, member);
+  const list = await act(story.house, readWorklist, clinician, { query: { search: member.name, limit: '50' } }, readWorklist.contract.answer);
+  for (const item of list.items) {
+    if (item.participantId !== person.id || item.lockoutId === null) continue;
+    const body = {
+      itemId: item.id,
+      finding: 'Spoke with the participant by telephone. The headache was gone by the evening.',
+      decision: 'lift',
+      reason: 'Goes on at a lower dose; to call at once if it grows.',
+      grading: { severity: 'moderate', serious: false, causality: 'probable', expected: true },
+      password: demoPassword,
+    };
+    await act(story.house, recordReview, clinician, { body }, Anything);
+  }
 }
 
 /** Rows of a person that ask for no decision of weight are looked at the same evening; what is locked stays for whoever opens the demo. */
