@@ -34,8 +34,10 @@ await main(async () => {
   await installPackages(say);
 
   const reset = process.argv.includes('--reset');
-  const [databaseUrl] = await Promise.all([openDatabase({ reset, say }), buildServer(say), isWorker || buildWeb(say)]);
-
+  // The demo is filled and the pages are built side by side: the server serves whatever pages lie there when it is asked.
+  const pages = isWorker ? undefined : buildWeb(say);
+  pages?.catch(() => undefined);
+  const [databaseUrl] = await Promise.all([openDatabase({ reset, say }), buildServer(say)]);
   const { ended } = launchServer({
     DATABASE_URL: databaseUrl,
     HOST: host,
@@ -46,7 +48,7 @@ await main(async () => {
   });
   if (!isWorker) {
     const address = `http://${browsable(host)}:${port}`;
-    await untilReady(address, ended);
+    await Promise.all([untilReady(address, ended), pages]);
     say(`Rampwell is ready: ${address}`);
   }
   await ended;
