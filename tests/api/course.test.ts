@@ -282,5 +282,13 @@ describe('the end of a course', () => {
     const course = await read(courseId);
     expect(course.sessionsDone).toBe(1);
     expect(course.marks[0]).toMatchObject({ plannedSessionId: begun.plannedSessionId, state: 'delivered' });
+    await recordSession(clinic, patient);
+    expect(await closeCourseIfDone(clinic.client.db, courseId, await clinic.now())).toBe(true);
+    const left = await clinic.rows(
+      { n: z.number() },
+      'select count(*)::int n from planned_session where course_id = $1 and closed_at is null',
+      [courseId],
+    );
+    expect(left).toEqual([{ n: 0 }]);
   });
 });
