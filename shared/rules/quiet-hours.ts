@@ -17,8 +17,3 @@ export function afterQuietHours(now: string, zone: string): string {
 export function nudgeDropAt(dueAt: string): string {
   return isoOf((parseInstant(dueAt) ?? Number.NaN) + nudgeLifeHours * hourMilliseconds);
 }
-
-/** What a mail that reveals nothing calls a person. */
-export function firstNameOf(name: string): string {
-  return name.trim().split(/\s+/)[0] ?? '';
-}

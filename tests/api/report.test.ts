@@ -58,6 +58,12 @@ beforeAll(async () => {
 });
 afterAll(() => clinic.close());
 
+async function nadiaInForce(): Promise<Patient> {
+  const nadia = await clinic.patient('Nadia Now', siteId);
+  await inForce(clinic, clinician, nadia);
+  return nadia;
+}
+
 describe('the report of a site', () => {
   it('counts each person’s sessions, and leaves those still to come in neither side', async () => {
     const { items } = await clinic.call(monitor, readSiteReport, {});
@@ -96,6 +102,13 @@ describe('the report of a site', () => {
     expect(second.totals).toEqual(first.totals);
   });
 
+  it('takes a session that is under way for neither done nor left undone', async () => {
+    const { totals: before } = await clinic.call(clinician, readSiteReport, {});
+    await beginSession(clinic, await nadiaInForce());
+    const { totals } = await clinic.call(clinician, readSiteReport, {});
+    expect(totals).toMatchObject({ complete: before.complete, planned: before.planned, missed: before.missed });
+  });
+
   it('of another site is not there', async () => {
     expect((await clinic.refused(stranger, readSiteReport, { query: { siteId } })).status).toBe(404);
     expect((await clinic.refused(stranger, exportSessions, { query: { siteId } })).status).toBe(404);
@@ -109,12 +122,12 @@ describe('the sessions as CSV', () => {
 
   it('has one line a session that began, by code alone', async () => {
     await clinic.advance(daySeconds);
-    await beginSession(clinic, ines);
+    await recordSession(clinic, ines);
     const lines = (await text(monitor)).split('\r\n');
     expect(lines.at(-1)).toBe('');
     const [header = '', ...rows] = lines.slice(0, -1);
     expect(header.split(',').slice(0, 4)).toEqual(['site', 'participant', 'session', 'number']);
-    expect(rows).toHaveLength(4);
+    expect(rows).toHaveLength(5);
     const cells = rows.map((row) =>
       Object.fromEntries(row.split(',').map((cell, index) => [header.split(',')[index], cell])),
     );

@@ -6,7 +6,8 @@ import { findOpenPause } from '@/db/queries/course-state';
 import { listOpenLockouts } from '@/db/queries/lockout';
 import { findPersonToTell, listMissedMailCaregivers, wasTried } from '@/db/queries/notice';
 import type { Tx } from '@/server/action';
-import { afterQuietHours, firstNameOf, nudgeDropAt } from '@/shared/rules/quiet-hours';
+import { afterQuietHours, nudgeDropAt } from '@/shared/rules/quiet-hours';
+import { firstNameOf } from '@/shared/values/first-name';
 
 export async function tellOfMissed(tx: Tx, missed: PlannedRecord, now: string): Promise<void> {
   const person = await findPersonToTell(tx.db, missed.participantId);
