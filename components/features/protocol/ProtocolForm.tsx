@@ -18,19 +18,20 @@ import { useToast } from '@/components/ui/Toast';
 import { space } from '@/components/ui/theme';
 import { changeProtocol } from '@/shared/contracts/site';
 import { ceilingText, limitFields } from './protocol-rows';
-import type { ProtocolView } from './ProtocolsScreen';
+import type { ProtocolBase } from './ProtocolsScreen';
 
 const terms = ['consentVersion', 'screeningValidDays', 'trainingValidDays', 'watchedSessionsRequired', 'retentionYears'] as const;
 const mostContacts = 10;
 const nobody = { name: '', email: '', phone: '' };
 
-export function ProtocolForm({ protocol, onDone }: { protocol: ProtocolView; onDone(): void }) {
+export function ProtocolForm({ protocol, onDone }: { protocol: ProtocolBase; onDone(): void }) {
   const { t } = useTranslation('protocol');
   const format = useFormat();
   const toast = useToast();
   const [key] = useState(() => crypto.randomUUID());
   const form = useContractForm(changeProtocol.body, { siteId: protocol.siteId, basedOnVersion: protocol.version, settings: protocol.settings, reason: '', password: '' });
   const contacts = useFieldArray({ control: form.control, name: 'settings.contacts' });
+  const title = t(protocol.version === 0 ? 'firstTitle' : 'formTitle', { site: protocol.siteName });
   const { failed, send } = useSigned(changeProtocol, form, {
     input: (body) => ({ body, key }),
     onDone: (signed) => {
@@ -39,8 +40,8 @@ export function ProtocolForm({ protocol, onDone }: { protocol: ProtocolView; onD
     },
   });
   return (
-    <Card heading={t('formTitle', { site: protocol.siteName })} note={t('formNote')}>
-      <Form onSubmit={send} label={t('formTitle', { site: protocol.siteName })}>
+    <Card heading={title} note={t('formNote')}>
+      <Form onSubmit={send} label={title}>
         {failed ? <Notice tone="stop" title={failed} announce="assertive" /> : null}
         <Text heading={3}>{t('limits')}</Text>
         {limitFields.map(({ field, ceiling, unit }) => (

@@ -15,11 +15,15 @@ import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
 import { listProtocols } from '@/shared/contracts/site';
+import { defaultProtocolSettings } from '@/shared/rules/protocol-defaults';
 import type { AnswerOf } from '@/shared/contracts/contract';
 import { ProtocolForm } from './ProtocolForm';
 import { limitRowsOf, termRowsOf } from './protocol-rows';
 
-export type ProtocolView = AnswerOf<typeof listProtocols>['items'][number];
+type ProtocolView = AnswerOf<typeof listProtocols>['items'][number];
+/** What a new version starts from; version 0 = the site has none yet. */
+export type ProtocolBase = Pick<ProtocolView, 'siteId' | 'siteName' | 'version' | 'settings'>;
+const nobody = { name: '', email: '', phone: '' };
 const wideRem = 60;
 
 export function ProtocolsScreen() {
@@ -27,15 +31,37 @@ export function ProtocolsScreen() {
   const me = useMe();
   const list = usePages(listProtocols, { query: {} });
   const protocols = list.data?.pages.flatMap((page) => page.items) ?? [];
+  const mayChange = me?.account.role === 'administrator';
+  const unsigned = list.data && !list.hasNextPage ? (me?.sites ?? []).filter((site) => protocols.every(({ siteId }) => siteId !== site.id)) : [];
   return (
     <StaffShell title={t('title')} place="protocols" maxRem={wideRem} subtitle={t('lead')}>
       {list.isPending ? <LoadingState lines={8} /> : null}
       {list.isError ? <FailedState onRetry={() => void list.refetch()} /> : null}
-      {list.data && protocols.length === 0 ? <EmptyState title={t('empty')} /> : null}
+      {list.data && protocols.length === 0 && unsigned.length === 0 ? <EmptyState title={t('empty')} /> : null}
+      {unsigned.map((site) => (
+        <UnsignedCard key={site.id} siteId={site.id} siteName={site.name} now={me?.now ?? ''} mayChange={mayChange} />
+      ))}
       {protocols.map((protocol) => (
-        <ProtocolCard key={protocol.id} protocol={protocol} mayChange={me?.account.role === 'administrator'} />
+        <ProtocolCard key={protocol.id} protocol={protocol} mayChange={mayChange} />
       ))}
     </StaffShell>
+  );
+}
+
+/** A site without a protocol: its administrator reads the shipped defaults, changes what the site wants otherwise, and signs. */
+function UnsignedCard({ siteId, siteName, now, mayChange }: { siteId: string; siteName: string; now: string; mayChange: boolean }) {
+  const { t } = useTranslation('protocol');
+  const [editing, setEditing] = useState(false);
+  if (editing) {
+    const settings = defaultProtocolSettings({ contacts: [nobody], consentRequiredFrom: now });
+    return <ProtocolForm protocol={{ siteId, siteName, version: 0, settings }} onDone={() => setEditing(false)} />;
+  }
+  return (
+    <Card
+      heading={siteName}
+      note={t('unsigned')}
+      {...(mayChange ? { aside: <Button size="small" label={t('first')} accessibleLabel={t('firstWhich', { site: siteName })} onPress={() => setEditing(true)} /> } : {})}
+    />
   );
 }
 

@@ -10,7 +10,7 @@ import { useMe } from '@/components/runtime/me';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Definition } from '@/components/ui/Definition';
-import { FailedState, LoadingState } from '@/components/ui/States';
+import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
 import { Table } from '@/components/ui/Table';
 import { Tag } from '@/components/ui/Tag';
 import { Text } from '@/components/ui/Text';
@@ -47,10 +47,11 @@ export function SiteScreen() {
           />
         </Card>
       ))}
-      <StaffTable names={new Map(all.map((site) => [site.id, site.name]))} mayChange={isAdministrator} myId={me?.account.id ?? ''} />
-      {isAdministrator && all.length > 0 ? (
+      {sites.data && all.length === 0 ? <EmptyState title={t('empty')}>{t('emptyHelp')}</EmptyState> : null}
+      {all.length > 0 ? <StaffTable names={new Map(all.map((site) => [site.id, site.name]))} mayChange={isAdministrator} myId={me?.account.id ?? ''} /> : null}
+      {isAdministrator && sites.data ? (
         <View style={{ gap: space[5] }}>
-          <InviteStaffForm sites={all.map(({ id, name }) => ({ value: id, label: name }))} />
+          {all.length > 0 ? <InviteStaffForm sites={all.map(({ id, name }) => ({ value: id, label: name }))} /> : null}
           <AddSiteForm />
         </View>
       ) : null}
