@@ -15,6 +15,7 @@ import {
   goToMorning,
   numbered,
   permitFor,
+  quietDiary,
   readyPatient,
   runSession,
   runUpTo,
@@ -23,7 +24,6 @@ import {
   wholeRun,
   type ReadyPatient,
 } from '../support/running';
-import { writeDiary } from '@/server/features/diary/write-diary';
 
 let clinic: Clinic;
 let siteId: string;
@@ -236,8 +236,7 @@ it('holds the stimulator after two sessions running that ended by lost contact',
   const ready = await newReady();
   for (let time = 0; time < 2; time += 1) {
     const permit = await runSession(clinic, ready, { endSecond: 700, reason: 'lost_contact' });
-    const answers = { nothingFelt: true, effects: [], headacheAfter: 0, skin: 'ok', redFlags: [] } as const;
-    await clinic.call(ready.patient, writeDiary, { params: { sessionId: permit.sessionId }, body: { kind: 'after', answers: { ...answers, effects: [], redFlags: [] } } });
+    await quietDiary(clinic, ready.patient, permit);
     if (time === 0) {
       expect(await lockoutsOf(ready.patient)).toEqual([]);
       await clinic.advance(86_400);

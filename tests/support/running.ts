@@ -2,6 +2,7 @@
 // Must not: say what is right; tests do.
 import { randomUUID } from 'node:crypto';
 import type { AccountActor } from '@/server/action';
+import { writeDiary } from '@/server/features/diary/write-diary';
 import { issuePermit } from '@/server/features/permit/issue-permit';
 import { answerPrecheck } from '@/server/features/precheck/answer-precheck';
 import { sendEvents } from '@/server/features/session/send-events';
@@ -89,7 +90,15 @@ export function runUpTo(permit: PermitView, endSecond: number): Said[] {
   ];
   for (let from = 0; from < endSecond; from += 60) {
     const samples = samplesOf(milliamp, from, Math.min(endSecond, from + 59));
-    said.push({ kind: 'samples', atSeconds: from, samples, impedance: [['F3', 6.4], ['Fp2', 7.5]] });
+    said.push({
+      kind: 'samples',
+      atSeconds: from,
+      samples,
+      impedance: [
+        ['F3', 6.4],
+        ['Fp2', 7.5],
+      ],
+    });
   }
   return said;
 }
@@ -97,9 +106,21 @@ export function runUpTo(permit: PermitView, endSecond: number): Said[] {
 type EndReason = Extract<SessionEvent, { kind: 'ended' }>['reason'];
 
 /** A whole record: the run and its end. */
-export function wholeRun(permit: PermitView, endSecond = 1260, reason: EndReason = 'complete', more: readonly Said[] = []): SessionEvent[] {
+export function wholeRun(
+  permit: PermitView,
+  endSecond = 1260,
+  reason: EndReason = 'complete',
+  more: readonly Said[] = [],
+): SessionEvent[] {
   const said = [...runUpTo(permit, endSecond), ...more];
-  const end = { kind: 'ended', atSeconds: endSecond, reason, onSeconds: endSecond, chargeCoulomb: 99, lastSequence: said.length } as const;
+  const end = {
+    kind: 'ended',
+    atSeconds: endSecond,
+    reason,
+    onSeconds: endSecond,
+    chargeCoulomb: 99,
+    lastSequence: said.length,
+  } as const;
   return numbered([...said, end]);
 }
 
@@ -117,4 +138,10 @@ export async function runSession(
   await clinic.advance(1300);
   await send(clinic, ready.patient, permit, wholeRun(permit, run.endSecond, run.reason, run.more));
   return permit;
+}
+
+/** A diary that tells of nothing. */
+export function quietDiary(clinic: Clinic, patient: Patient, { sessionId }: PermitView) {
+  const answers = { nothingFelt: true, effects: [], headacheAfter: 0, skin: 'ok' as const, redFlags: [] };
+  return clinic.call(patient, writeDiary, { params: { sessionId }, body: { kind: 'after', answers } });
 }
