@@ -39,11 +39,9 @@ export function AuditScreen() {
       actions={
         <SelectField
           label={t('kindLabel')}
-          value={kind ?? ''}
-          placeholder={t('anyKind')}
-          optional
-          onChange={(value) => router.setParams({ kind: value === '' ? undefined : value })}
-          options={kinds.map((value) => ({ value, label: t(`kind.${value}`) }))}
+          value={kind ?? 'any'}
+          onChange={(value) => router.setParams({ kind: value === 'any' || value === '' ? undefined : value })}
+          options={(['any', ...kinds] as const).map((value) => ({ value, label: value === 'any' ? t('anyKind') : t(`kind.${value}`) }))}
         />
       }
     >

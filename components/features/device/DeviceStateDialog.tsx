@@ -37,7 +37,7 @@ export function DeviceStateDialog({ device, onClose }: { device: DeviceView; onC
       <View style={{ gap: space[4] }}>
         {change.error ? <Notice tone="stop" title={change.error.offline ? t('common:notSent') : change.error.problem.detail} announce="assertive" /> : null}
         <Text>{t('register.changeHelp')}</Text>
-        <SelectField label={t('register.to')} value={state} placeholder={t('register.state')} onChange={setState} options={states.filter((value) => value !== device.state).map((value) => ({ value, label: t(`register.states.${value}`) }))} />
+        <SelectField<(typeof states)[number]> label={t('register.to')} value={state} placeholder={t('register.state')} onChange={setState} options={states.filter((value) => value !== device.state).map((value) => ({ value, label: t(`register.states.${value}`) }))} />
         <TextField label={t('register.reason')} value={reason} onChange={setReason} autoComplete="off" />
       </View>
     </Dialog>

@@ -40,11 +40,9 @@ export function DevicesScreen() {
       actions={
         <SelectField
           label={t('register.state')}
-          value={state ?? ''}
-          placeholder={t('register.anyState')}
-          optional
-          onChange={(value) => router.setParams({ state: value === '' ? undefined : value })}
-          options={deviceStates.map((value) => ({ value, label: t(`register.states.${value}`) }))}
+          value={state ?? 'any'}
+          onChange={(value) => router.setParams({ state: value === 'any' || value === '' ? undefined : value })}
+          options={(['any', ...deviceStates] as const).map((value) => ({ value, label: value === 'any' ? t('register.anyState') : t(`register.states.${value}`) }))}
         />
       }
     >

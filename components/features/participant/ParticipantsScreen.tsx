@@ -49,11 +49,9 @@ export function ParticipantsScreen() {
         </View>
         <SelectField
           label={t('stateLabel')}
-          value={state ?? ''}
-          placeholder={t('anyState')}
-          optional
-          onChange={(value) => router.setParams({ state: value === '' ? undefined : value })}
-          options={participantStates.map((value) => ({ value, label: t(`state.${value}`) }))}
+          value={state ?? 'any'}
+          onChange={(value) => router.setParams({ state: value === 'any' || value === '' ? undefined : value })}
+          options={(['any', ...participantStates] as const).map((value) => ({ value, label: value === 'any' ? t('anyState') : t(`state.${value}`) }))}
         />
       </View>
       {list.isPending ? <LoadingState lines={8} /> : null}

@@ -36,7 +36,7 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
       id: 'who',
       header: t('column.who'),
       flex: 1,
-      minRem: 10,
+      minRem: 8,
       isRowHeader: true,
       sortable: true,
       bareOnPhone: true,
@@ -49,13 +49,13 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
         </View>
       ),
     },
-    { id: 'state', header: t('column.state'), flex: 0, minRem: 8, cell: (row) => <Tag tone={stateTones[row.state]} label={t(`state.${row.state}`)} /> },
-    { id: 'course', header: t('column.course'), flex: 2, minRem: 14, bareOnPhone: true, cell: (row) => (row.marks.length > 0 ? <Strip marks={row.marks} size="row" zone={format.zone} /> : muted(t('noCourse'))) },
+    { id: 'state', header: t('column.state'), flex: 0, minRem: 7.5, cell: (row) => <Tag tone={stateTones[row.state]} label={t(`state.${row.state}`)} /> },
+    { id: 'course', header: t('column.course'), flex: 2, minRem: 13, bareOnPhone: true, cell: (row) => (row.marks.length > 0 ? <Strip marks={row.marks} size="row" zone={format.zone} /> : muted(t('noCourse'))) },
     {
       id: 'adherence',
       header: t('column.adherence'),
       flex: 0,
-      minRem: 8,
+      minRem: 7,
       cell: (row) =>
         row.adherence && row.adherence.planned > 0 ? (
           <View>
@@ -76,7 +76,7 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
       id: 'prescribed',
       header: t('column.prescribed'),
       flex: 0,
-      minRem: 8,
+      minRem: 7,
       hideOnPhone: true,
       cell: (row) => (row.prescribed ? t('prescribed', { intensity: format.number(row.prescribed.intensityMilliamp), minutes: format.number(row.prescribed.minutes, 0) }) : muted(t('none'))),
     },
@@ -84,10 +84,10 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
       id: 'effect',
       header: t('column.effect'),
       flex: 1,
-      minRem: 8,
+      minRem: 7,
       cell: (row) => (row.lastEffect ? t('effect', { kind: t(`diary:effect.${row.lastEffect.kind}`), strength: row.lastEffect.strength, since: format.since(row.lastEffect.at, now) }) : muted(t('none'))),
     },
-    { id: 'next', header: t('column.next'), flex: 0, minRem: 8, cell: (row) => (row.nextFrom ? format.dayTime(row.nextFrom) : muted(t('none'))) },
-    { id: 'since', header: t('column.since'), flex: 0, minRem: 5, sortable: true, hideOnPhone: true, cell: (row) => muted(format.shortDay(row.since)) },
+    { id: 'next', header: t('column.next'), flex: 0, minRem: 7, cell: (row) => (row.nextFrom ? format.dayTime(row.nextFrom) : muted(t('none'))) },
+    { id: 'since', header: t('column.since'), flex: 0, minRem: 4, sortable: true, hideOnPhone: true, cell: (row) => muted(format.shortDay(row.since)) },
   ];
 }

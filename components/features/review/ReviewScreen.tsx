@@ -7,6 +7,7 @@ import { useTranslation } from 'react-i18next';
 import type { ReactNode } from 'react';
 import { View } from 'react-native';
 import { Strip } from '@/components/features/course/pictures/Strip';
+import { sentenceOf } from '@/components/features/worklist/pictures/why';
 import { StaffShell } from '@/components/layout/StaffShell';
 import { usePages, useRead } from '@/components/runtime/api';
 import { useFormat } from '@/components/runtime/format';
@@ -52,7 +53,6 @@ function Page({ item }: { item: WorklistItem }) {
   const { rem } = useTheme();
   const person = useRead(readParticipant, { params: { participantId: item.participantId } });
   const format = useFormat(person.data?.zone);
-  const facts = Object.fromEntries(Object.entries(item.facts).map(([name, value]) => [name, value ?? '']));
   const toPerson = { pathname: '/participants/[participantId]' as const, params: { participantId: item.participantId } };
   return (
     <StaffShell
@@ -72,7 +72,7 @@ function Page({ item }: { item: WorklistItem }) {
         <View style={{ flexGrow: 1, flexShrink: 1, flexBasis: rem(sideBySideRem), gap: space[5] }}>
           <Card heading={t(`worklist:level.${item.level}`)} edge={item.level === 'safety' || item.level === 'review' ? 'stop' : 'caution'}>
             <View style={{ gap: space[4] }}>
-              <Text size="lead">{t(`worklist:why.${item.why}`, facts)}</Text>
+              <Text size="lead">{sentenceOf(item, t)}</Text>
               <Strip marks={item.marks} size="page" zone={format.zone} />
               {item.sessionId ? (
                 <ButtonLink

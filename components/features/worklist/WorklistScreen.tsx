@@ -20,7 +20,7 @@ import { claimItem, readWorklist, type WorklistItem } from '@/shared/contracts/w
 import { KeysDialog } from './KeysDialog';
 import { worklistColumns } from './worklist-columns';
 import { useRowKeys } from './use-row-keys';
-import { nextOf } from './why';
+import { nextOf } from './pictures/why';
 
 const everyMs = 15_000;
 const whoseOptions = ['all', 'mine_and_nobodys'] as const;

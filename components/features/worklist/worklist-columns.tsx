@@ -10,7 +10,7 @@ import type { Column } from '@/components/ui/Table';
 import { Tag } from '@/components/ui/Tag';
 import { Text } from '@/components/ui/Text';
 import type { WorklistItem } from '@/shared/contracts/worklist';
-import { sentenceOf, toneOf } from './why';
+import { sentenceOf, toneOf } from './pictures/why';
 
 export interface ColumnFacts {
   t: TFunction;

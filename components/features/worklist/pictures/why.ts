@@ -18,13 +18,12 @@ export function toneOf(item: WorklistItem): StateTone {
   return tones[item.level];
 }
 
-/** "Headache 7 of 10 after session 8" */
+/** "Headache 7 of 10 after session 8": the fuller sentence where the facts that it speaks of came along. */
 export function sentenceOf(item: Pick<WorklistItem, 'why' | 'facts'>, t: TFunction): string {
   const facts = Object.fromEntries(Object.entries(item.facts).map(([name, value]) => [name, value ?? '']));
-  const said = typeof facts.kind === 'string' ? { ...facts, kind: t(`diary:effect.${facts.kind}`) } : facts;
-  const wanted = [`worklist:why.${item.why}_full`, `worklist:why.${item.why}`];
-  // The fuller sentence only where the facts that it speaks of came along.
-  return 'number' in said ? t(wanted, said) : t(`worklist:why.${item.why}`, said);
+  const said = typeof facts.effect === 'string' ? { ...facts, effect: t(`diary:effect.${facts.effect}`) } : facts;
+  const plain = `worklist:why.${item.why}`;
+  return t(Object.keys(said).length > 0 ? [`${plain}_full`, plain] : plain, said);
 }
 
 /** Where the one next action leads. */
