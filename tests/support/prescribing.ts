@@ -18,7 +18,11 @@ export type Change = {
 };
 
 /** 2 mA for 20 min on every day from today, from midnight to a minute before the next, 20 sessions: one signature is enough. */
-export function prescriptionFor(patient: Patient, now: string, change: Change = {}): PrescriptionBody {
+export function prescriptionFor(
+  patient: Pick<Patient, 'participantId'>,
+  now: string,
+  change: Change = {},
+): PrescriptionBody {
   const today = localDate(Date.parse(now), 'Europe/London');
   const pad = { shape: 'pad', areaSquareCentimetre: 35, share: 1 } as const;
   return {
