@@ -17,7 +17,7 @@ export function LockoutsCard({ person }: { person: ParticipantView }) {
   return (
     <View style={{ gap: space[3] }}>
       {open.map((lockout) => (
-        <Notice key={lockout.id} tone={lockout.level === 'hold' || lockout.level === 'device' ? 'caution' : 'stop'} title={t(`lockout.${lockout.level}`)}>
+        <Notice key={lockout.id} tone={lockout.level === 'hold' || lockout.level === 'device' ? 'caution' : 'stop'} word={t('lockout.word')} title={t(`lockout.${lockout.level}`)}>
           <Text>{t(`worklist:why.${lockout.code}`)}</Text>
           <Text tone="muted">
             {lockout.until ? t('lockout.sinceUntil', { since: format.dayTime(lockout.openedAt), until: format.dayTime(lockout.until) }) : t('lockout.since', { since: format.dayTime(lockout.openedAt) })}

@@ -12,7 +12,7 @@ export function sentenceOfEntry(entry: TimelineEntry, format: Format, t: TFuncti
     else if (typeof value === 'string') facts[name] = value;
   }
   if (facts.code) facts.what = t(`worklist:why.${facts.code}`);
-  const word = facts.outcome ?? facts.state ?? facts.decision ?? facts.completeness ?? facts.change;
+  const word = facts.outcome ?? facts.decision ?? facts.completeness ?? facts.event ?? facts.page;
   const keys = word ? [`participants:timeline.kind.${entry.kind}_${word}`, `participants:timeline.kind.${entry.kind}`] : [`participants:timeline.kind.${entry.kind}`];
   return t(keys, facts);
 }

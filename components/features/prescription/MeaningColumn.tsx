@@ -2,6 +2,7 @@
  * What the form means while it is written: the trapezoid to scale with the old one dashed, every limit as a bar with layer and source, the
  * verdict of the same rule that the server uses.
  */
+import type { TFunction } from 'i18next';
 import { useTranslation } from 'react-i18next';
 import { View } from 'react-native';
 import { Trapezoid } from '@/components/features/session/pictures/Trapezoid';
@@ -12,6 +13,7 @@ import { Tag } from '@/components/ui/Tag';
 import { Text } from '@/components/ui/Text';
 import { space, useTheme } from '@/components/ui/theme';
 import type { PrescriptionView } from '@/shared/contracts/prescription';
+import { ceilings, type Ceiling } from '@/shared/rules/ceilings';
 import { chargeOf, doseFactsOf, judgeDose, minutesOn, type DoseRow } from '@/shared/rules/dose';
 import type { SiteLimits } from '@/shared/values/protocol-settings';
 import { LimitBar } from './pictures/LimitBar';
@@ -24,6 +26,14 @@ export interface MeaningColumnProps {
   limits: SiteLimits;
 }
 
+/** What is drawn as a bar against its ceiling; everything else is said in words. */
+const barCeilings: Partial<Record<DoseRow['quantity'], Ceiling>> = {
+  current: ceilings.currentMilliamp,
+  minutes: ceilings.minutes,
+  charge: ceilings.chargeCoulomb,
+  density: ceilings.densityMilliampPerSquareCentimetre,
+  day_minutes: ceilings.minutesPerDay,
+};
 const tones = { accept: 'action', second_signature: 'caution', refuse: 'stop' } as const;
 const minute = 60;
 
@@ -33,7 +43,7 @@ export function MeaningColumn({ value, before, ageYears, limits }: MeaningColumn
   const format = useFormat();
   const { dose, schedule } = value;
   const judged = judgeDose(doseFactsOf({ ...dose, sessionsPerDay: schedule.maxPerDay, minGapHours: schedule.minGapHours }), ageYears, limits);
-  const bars = judged.rows.filter((row) => row.value !== undefined && row.ceiling !== undefined);
+  const bars = judged.rows.filter((row) => row.value !== undefined && row.ceiling !== undefined && row.quantity in barCeilings);
   const others = judged.rows.filter((row) => !bars.includes(row));
   const isWhole = Number.isFinite(chargeOf(dose));
   return (
@@ -64,9 +74,11 @@ export function MeaningColumn({ value, before, ageYears, limits }: MeaningColumn
           {others.map((row) => (
             <View key={`${row.quantity} ${row.fact ?? ''}`} style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[3] }}>
               <View style={{ flexGrow: 1 }}>
-                <Text>{t(`row.${row.quantity}`)}</Text>
+                <Text>
+                  {row.value === undefined ? t(`row.${row.quantity}`) : t('rowValue', { label: t(`row.${row.quantity}`), value: `${format.number(row.value)} ${row.unit}`.trim() })}
+                </Text>
                 <Text size="fine" tone="muted">
-                  {t('sourceOnly', { source: row.source })}
+                  {limitText(row, format, t)}
                 </Text>
               </View>
               <Tag tone={tones[row.tier] === 'action' ? 'steady' : tones[row.tier]} label={t(row.tier === 'accept' ? 'okay' : row.tier === 'refuse' ? 'refused' : 'second')} />
@@ -81,11 +93,22 @@ export function MeaningColumn({ value, before, ageYears, limits }: MeaningColumn
   );
 }
 
+/** "from 20 h with one signature, never under 4 h; own choice" */
+function limitText(row: DoseRow, format: ReturnType<typeof useFormat>, t: TFunction): string {
+  const withUnit = (amount: number) => `${format.number(amount)} ${row.unit}`.trim();
+  const parts = [
+    ...(row.routineLimit === undefined ? [] : [t(`prescription:one.${row.direction}`, { limit: withUnit(row.routineLimit) })]),
+    ...(row.siteLimit === undefined ? [] : [t(`prescription:two.${row.direction}`, { limit: withUnit(row.siteLimit) })]),
+    ...(row.floor === undefined || row.ceiling === undefined ? [] : [t('prescription:between', { from: withUnit(row.floor), to: withUnit(row.ceiling) })]),
+    row.source,
+  ];
+  return parts.join(' · ');
+}
+
 function Bar({ row }: { row: DoseRow }) {
   const { t } = useTranslation('prescription');
   const format = useFormat();
   const withUnit = (amount: number) => `${format.number(amount)} ${row.unit}`;
-  const binding = row.siteLimit ?? row.routineLimit ?? row.ceiling ?? 0;
   return (
     <LimitBar
       label={t(`row.${row.quantity}`)}
@@ -94,8 +117,8 @@ function Bar({ row }: { row: DoseRow }) {
       ceiling={row.ceiling ?? 0}
       {...(row.siteLimit === undefined ? {} : { siteLimit: row.siteLimit })}
       {...(row.routineLimit === undefined ? {} : { routine: row.routineLimit })}
-      layerText={t(row.siteLimit === undefined ? 'layer.routine' : 'layer.site', { limit: withUnit(binding) })}
-      sourceText={t('source', { ceiling: withUnit(row.ceiling ?? 0), source: row.source })}
+      layerText={t(row.siteLimit === undefined ? 'layer.routine' : 'layer.both', { routine: withUnit(row.routineLimit ?? 0), site: withUnit(row.siteLimit ?? 0) })}
+      sourceText={t('source', { ceiling: withUnit(row.ceiling ?? 0), source: barCeilings[row.quantity]?.source ?? row.source })}
       tone={tones[row.tier]}
     />
   );
