@@ -11,8 +11,9 @@ let clinicianEmail: string;
 beforeAll(async () => {
   at = await openTestHouse();
   const siteId = await at.site('LS');
-  clinicianEmail = (await at.person('clinician', siteId)).email;
-  clinician = await at.signedIn(clinicianEmail);
+  const person = await at.person('clinician', siteId);
+  clinicianEmail = person.email;
+  clinician = await at.inSession(person.accountId);
 });
 afterAll(() => at.close());
 

@@ -89,11 +89,11 @@ describe('an invitation', () => {
     const caregiver = await at.person('caregiver', siteId);
     const other = await at.person('caregiver', siteId);
     const token = await invite('caregiver', caregiver.email, await caregiverRow(caregiver.email));
-    const stranger = await at.signedIn(other.email);
+    const stranger = await at.inSession(other.accountId);
     expect((await stranger.post('/api/invitations/join').send({ token }).expect(409)).body.code).toBe(
       'invitation.other_address',
     );
-    const browser = await at.signedIn(caregiver.email);
+    const browser = await at.inSession(caregiver.accountId);
     await browser.post('/api/invitations/join').send({ token }).expect(200);
     expect((await browser.get('/api/me')).body.sites).toHaveLength(1);
   });

@@ -54,20 +54,17 @@ export function DiaryScreen() {
   return <DiaryPageView diary={diary} draft={draft} />;
 }
 
-function titleOf(diary: Diary): string {
-  return diary.page === 'headache' ? `headache.title.${diary.kind}` : `${diary.page}.title`;
-}
-
 function DiaryPageView({ diary, draft }: { diary: Diary; draft: DiaryDraft }) {
   const { t } = useTranslation('diary');
   const { page, site, session } = diary;
   const urgent = urgentOf(draft);
+  const title = page === 'headache' ? t(`headache.title.${diary.kind}`) : t(`${page}.title`);
   const photo = { photo: diary.photo, onChange: diary.setPhoto };
   const place = t('place', { value: diary.pageNumber, max: diary.pageCount });
   const number = session.data?.number;
   return (
     <StepShell
-      title={t(titleOf(diary))}
+      title={title}
       lead={page === 'felt' && number !== undefined ? t('after', { number }) : t(`${page}.lead`)}
       step={{ value: diary.pageNumber, max: diary.pageCount, label: place }}
       onBack={diary.back}
@@ -98,7 +95,7 @@ function DiaryPageView({ diary, draft }: { diary: Diary; draft: DiaryDraft }) {
         <EmergencyAdvice code={urgent} emergencyNumber={site.emergencyNumber} siteName={site.name} phone={site.phone} />
       ) : null}
       {page === 'felt' ? <FeltPage draft={draft} onChange={diary.change} /> : null}
-      {page === 'headache' ? <HeadachePage draft={draft} onChange={diary.change} title={t(titleOf(diary))} /> : null}
+      {page === 'headache' ? <HeadachePage draft={draft} onChange={diary.change} title={title} /> : null}
       {page === 'skin' ? <SkinPage draft={draft} onChange={diary.change} photo={photo} /> : null}
       {page === 'redness' ? <RednessPage draft={draft} onChange={diary.change} photo={photo} /> : null}
       {page === 'flags' ? <FlagsPage draft={draft} onChange={diary.change} /> : null}

@@ -68,6 +68,8 @@ function QuestionPage({ precheck }: { precheck: Precheck }) {
   const isCodeMissing =
     page.name === 'helper' && answers.helperPresent === true && !/^[0-9]{6}$/.test(precheck.helperCode);
   const none = noneOf[page.name];
+  // An emergency waits for no other answer of the page.
+  const isUrgent = consequence.outcome === 'emergency';
 
   const onAnswer = (question: PrecheckQuestion, change: PrecheckAnswers) => {
     const given = { ...answers, ...change };
@@ -90,11 +92,11 @@ function QuestionPage({ precheck }: { precheck: Precheck }) {
         <View style={{ gap: space[3] }}>
           {precheck.problem ? <SendProblem precheck={precheck} /> : null}
           <Button
-            label={t(consequence.outcome === 'emergency' ? 'sendNow' : precheck.isLast ? 'send' : 'next')}
+            label={t(isUrgent ? 'sendNow' : precheck.isLast ? 'send' : 'next')}
             size="large"
             grow
             busy={precheck.isSending}
-            disabled={!precheck.isPageAnswered || isReadyAndNot || isCodeMissing}
+            disabled={!isUrgent && (!precheck.isPageAnswered || isReadyAndNot || isCodeMissing)}
             onPress={() => precheck.next()}
           />
         </View>
