@@ -10,6 +10,7 @@ import { ParticipantShell } from '@/components/layout/ParticipantShell';
 import type { DeviceSession } from '@/components/runtime/device/stimulator';
 import { useFormat } from '@/components/runtime/format';
 import { useMe } from '@/components/runtime/me';
+import { useNoNetwork } from '@/components/runtime/online';
 import type { RunRow } from '@/components/runtime/phone-store';
 import type { RunView, SessionRun } from '@/components/runtime/session-run';
 import { useUnsent } from '@/components/runtime/unsent';
@@ -52,6 +53,7 @@ export function RunPage({ view, run, device, session }: RunPageProps) {
   const { t } = useTranslation('session');
   const me = useMe();
   const { isOffline } = useUnsent();
+  const isNetworkGone = useNoNetwork() || isOffline;
   const [isFeelOpen, setFeelOpen] = useState(false);
   const [noted, setNoted] = useState<string | null>(null);
   const picture = runPictureOf(device);
@@ -66,7 +68,7 @@ export function RunPage({ view, run, device, session }: RunPageProps) {
       titleSize="huge"
       lead={words.line}
       date={t('run.number', { number: run.sessionNumber, total: run.sessionsTotal })}
-      headEnd={isOffline ? <Tag bare label={t('run.offline')} /> : undefined}
+      headEnd={isNetworkGone ? <Tag bare label={t('run.offline')} /> : undefined}
       hideTabs
       footer={picture.isOver ? <Over run={run} session={session} /> : <Stop picture={picture} session={session} />}
     >

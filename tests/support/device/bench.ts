@@ -1,5 +1,6 @@
 // What: a simulated stimulator on a bench: its clocks are turned by hand, its record lies in an IndexedDB in memory.
 // Must not: wait for real time.
+import { setImmediate } from 'node:timers';
 import { openDeviceStore } from '@/components/runtime/device/device-state';
 import { SimulatedStimulator, type DeviceParts } from '@/components/runtime/device/simulated-stimulator';
 import { startsWeak } from '@/components/runtime/device/contact-model';

@@ -66,9 +66,8 @@ export async function restAll(): Promise<void> {
   for (const sender of senders) sender.rest();
 }
 
-async function around(accountId: string, bench: Bench): Promise<RunBench> {
+async function around(accountId: string, bench: Bench, sender = new UnsentSender(accountId)): Promise<RunBench> {
   let seconds = 0;
-  const sender = new UnsentSender(accountId);
   senders.push(sender);
   const run = new SessionRun(accountId, {
     stimulator: async () => bench.device,
@@ -99,11 +98,14 @@ async function around(accountId: string, bench: Bench): Promise<RunBench> {
 
 /** Paired, on the head, contact good, nothing begun. The bench's device is open already. */
 export async function runBench(signer: Signer, accountId = freshAccount()): Promise<RunBench> {
-  const bench = await readyBench(signer, accountId);
+  return runBenchOf(accountId, await readyBench(signer, accountId));
+}
+
+export async function runBenchOf(accountId: string, bench: Bench, sender?: UnsentSender): Promise<RunBench> {
   const opened = bench.device;
   // The runner opens what it is given; this one is open.
   opened.open = async () => undefined;
-  const made = await around(accountId, bench);
+  const made = await around(accountId, bench, sender);
   await made.run.open();
   return made;
 }

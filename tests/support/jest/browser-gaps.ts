@@ -33,3 +33,7 @@ if (typeof window !== 'undefined' && !window.matchMedia) {
     }),
   });
 }
+
+// jsdom has the name and throws; nothing is laid out there, so there is nothing to scroll.
+if (typeof window !== 'undefined')
+  Object.defineProperty(window, 'scrollTo', { configurable: true, value: () => undefined });
