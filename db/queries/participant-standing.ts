@@ -1,7 +1,8 @@
 // Where many people stand at once: what their state and readiness are judged by, for lists as for one person. A fixed number of statements
 // whatever the number of people. Judges nothing: shared/rules/readiness.ts and participant-state.ts do.
 
-import { and, desc, eq, gt, inArray, isNotNull, isNull, ne, or, sql } from 'drizzle-orm';
+import { and, desc, eq, gt, isNotNull, isNull, ne, or, sql } from 'drizzle-orm';
+import type { PgColumn } from 'drizzle-orm/pg-core';
 import type { Db } from '@/db/client';
 import { account } from '@/db/schema/account';
 import { acknowledgement, course, coursePause, plannedSession, prescription, signature } from '@/db/schema/course';
@@ -53,6 +54,11 @@ export interface StandingPrescription {
   isAssisted: boolean;
 }
 
+/** One parameter however many ids: a list of thousands would be planned anew each time. */
+function among(column: PgColumn, ids: readonly string[]) {
+  return sql`${column} = any(${`{${ids.join(',')}}`}::uuid[])`;
+}
+
 function listPeople(db: Db, ids: string[]) {
   return db
     .select({
@@ -66,7 +72,7 @@ function listPeople(db: Db, ids: string[]) {
     })
     .from(participant)
     .leftJoin(account, eq(account.id, participant.accountId))
-    .where(inArray(participant.id, ids));
+    .where(among(participant.id, ids));
 }
 
 function listNewestConsents(db: Db, ids: string[]) {
@@ -78,7 +84,7 @@ function listNewestConsents(db: Db, ids: string[]) {
       closedAt: consent.closedAt,
     })
     .from(consent)
-    .where(inArray(consent.participantId, ids))
+    .where(among(consent.participantId, ids))
     .orderBy(consent.participantId, consent.kind, desc(consent.createdAt), desc(consent.id));
 }
 
@@ -90,7 +96,7 @@ function listNewestScreenings(db: Db, ids: string[]) {
       validUntil: screening.validUntil,
     })
     .from(screening)
-    .where(inArray(screening.participantId, ids))
+    .where(among(screening.participantId, ids))
     .orderBy(screening.participantId, desc(screening.createdAt), desc(screening.id));
 }
 
@@ -102,7 +108,7 @@ function listNewestTrainings(db: Db, ids: string[]) {
       validUntil: training.validUntil,
     })
     .from(training)
-    .where(inArray(training.participantId, ids))
+    .where(among(training.participantId, ids))
     .orderBy(training.participantId, desc(training.createdAt), desc(training.id));
 }
 
@@ -114,7 +120,7 @@ function listWatched(db: Db, ids: string[], now: string) {
       isNow: sql<boolean>`bool_or(coalesce(${watchedSession.until} > ${now}, false))`,
     })
     .from(watchedSession)
-    .where(inArray(watchedSession.participantId, ids))
+    .where(among(watchedSession.participantId, ids))
     .groupBy(watchedSession.participantId);
 }
 
@@ -128,14 +134,14 @@ function listDevicesOf(db: Db, ids: string[]) {
     })
     .from(deviceAssignment)
     .innerJoin(device, eq(device.id, deviceAssignment.deviceId))
-    .where(and(inArray(deviceAssignment.participantId, ids), isNull(deviceAssignment.closedAt)));
+    .where(and(among(deviceAssignment.participantId, ids), isNull(deviceAssignment.closedAt)));
 }
 
 function listSupplyCounts(db: Db, ids: string[]) {
   return db
     .select({ participantId: supply.participantId, count: sql<number>`count(*)::int` })
     .from(supply)
-    .where(and(inArray(supply.participantId, ids), isNull(supply.closedAt)))
+    .where(and(among(supply.participantId, ids), isNull(supply.closedAt)))
     .groupBy(supply.participantId);
 }
 
@@ -150,7 +156,7 @@ function listCourses(db: Db, ids: string[]) {
     })
     .from(course)
     .leftJoin(coursePause, and(eq(coursePause.courseId, course.id), isNull(coursePause.closedAt)))
-    .where(inArray(course.participantId, ids))
+    .where(among(course.participantId, ids))
     .orderBy(course.participantId, sql`${course.closedAt} is null desc`, desc(course.createdAt));
 }
 
@@ -174,7 +180,7 @@ function listPrescriptionsOf(db: Db, ids: string[]) {
     })
     .from(prescription)
     .leftJoin(acknowledgement, eq(acknowledgement.prescriptionId, prescription.id))
-    .where(and(inArray(prescription.participantId, ids), isNull(prescription.closedAt)))
+    .where(and(among(prescription.participantId, ids), isNull(prescription.closedAt)))
     .orderBy(
       prescription.participantId,
       sql`${prescription.signedAt} is not null desc`,
@@ -183,21 +189,17 @@ function listPrescriptionsOf(db: Db, ids: string[]) {
     );
 }
 
-function listNextWindows(db: Db, ids: string[], now: string) {
+function listNextWindows(db: Db, courseIds: string[], now: string) {
   return db
-    .selectDistinctOn([plannedSession.participantId], {
+    .selectDistinctOn([plannedSession.courseId], {
       participantId: plannedSession.participantId,
       windowFrom: plannedSession.windowFrom,
     })
     .from(plannedSession)
     .where(
-      and(
-        inArray(plannedSession.participantId, ids),
-        isNull(plannedSession.closedAt),
-        gt(plannedSession.windowTo, now),
-      ),
+      and(among(plannedSession.courseId, courseIds), isNull(plannedSession.closedAt), gt(plannedSession.windowTo, now)),
     )
-    .orderBy(plannedSession.participantId, plannedSession.windowFrom);
+    .orderBy(plannedSession.courseId, plannedSession.windowFrom);
 }
 
 function listOpenLockouts(db: Db, ids: string[], now: string) {
@@ -206,7 +208,7 @@ function listOpenLockouts(db: Db, ids: string[], now: string) {
     .from(lockout)
     .where(
       and(
-        inArray(lockout.participantId, ids),
+        among(lockout.participantId, ids),
         isNull(lockout.closedAt),
         or(isNull(lockout.until), gt(lockout.until, now)),
       ),
@@ -225,7 +227,7 @@ function listLateSessions(db: Db, ids: string[], now: string) {
     .from(session)
     .where(
       and(
-        inArray(session.participantId, ids),
+        among(session.participantId, ids),
         isNotNull(session.startedAt),
         or(isNull(session.closedWhy), ne(session.closedWhy, 'unused')),
         or(sql`${session.startedAt} > ${now}::timestamptz - interval '7 days'`, isLast),
@@ -278,7 +280,13 @@ export async function loadStanding(
   const supplies = byPerson(await listSupplyCounts(db, ids));
   const courses = byPerson(await listCourses(db, ids));
   const prescriptions = byPerson(await listPrescriptionsOf(db, ids));
-  const windows = byPerson(await listNextWindows(db, ids, now));
+  const windows = byPerson(
+    await listNextWindows(
+      db,
+      [...courses.values()].map(({ id }) => id),
+      now,
+    ),
+  );
   const lockouts = listsByPerson(await listOpenLockouts(db, ids, now));
   const sessions = listsByPerson(await listLateSessions(db, ids, now));
 

@@ -50,9 +50,12 @@ export type AskedState = 'invited' | 'training' | 'ready' | 'too_early' | 'held'
 const exists = (from: string) => sql.raw(`exists (select 1 from ${from})`);
 const hasOpenCourse = exists('course c where c.participant_id = participant.id and c.closed_at is null');
 const hasCourse = exists('course c where c.participant_id = participant.id');
-const isSigned = exists(
-  'prescription p where p.participant_id = participant.id and p.signed_at is not null and p.closed_at is null',
+const hasFinishedCourse = exists(`course c where c.participant_id = participant.id and c.closed_why = 'finished'`);
+const isAcknowledged = exists(
+  `prescription p join acknowledgement a on a.prescription_id = p.id
+   where p.participant_id = participant.id and p.signed_at is not null and p.closed_at is null`,
 );
+const hasDevice = exists('device_assignment d where d.participant_id = participant.id and d.closed_at is null');
 const isPaused = exists(
   'course_pause u join course c on c.id = u.course_id where c.participant_id = participant.id and u.closed_at is null',
 );
@@ -61,24 +64,29 @@ const isPaused = exists(
 function needsOf(state: AskedState, now: string): SQL | undefined {
   const isHere = isNull(participant.closedAt);
   const isJoined = sql`${participant.accountId} is not null`;
+  const isHeld = sql`exists (select 1 from ${lockout} l where l.participant_id = "participant"."id" and l.closed_at is null
+    and (l.until is null or l.until > ${now}::timestamptz))`;
+  const hasWindowLeft = sql`exists (select 1 from course c join planned_session p on p.course_id = c.id
+    where c.participant_id = "participant"."id" and c.closed_at is null and p.closed_at is null and p.window_to > ${now}::timestamptz)`;
+  const hasOpenWindow = sql`exists (select 1 from course c join planned_session p on p.course_id = c.id
+    where c.participant_id = "participant"."id" and c.closed_at is null and p.closed_at is null
+      and p.window_from <= ${now}::timestamptz and p.window_to > ${now}::timestamptz)`;
+  const isEquipped = and(isJoined, hasOpenCourse, isAcknowledged, hasDevice, sql`not ${isPaused}`);
   switch (state) {
     case 'withdrawn':
       return or(sql`${participant.closedAt} is not null`, hasCourse);
     case 'invited':
       return and(isHere, isNull(participant.accountId));
     case 'held':
-      return and(
-        isHere,
-        sql`exists (select 1 from ${lockout} l where l.participant_id = "participant"."id" and l.closed_at is null
-          and (l.until is null or l.until > ${now}))`,
-      );
+      return and(isHere, isHeld);
     case 'paused':
       return and(isHere, isJoined, isPaused);
     case 'finished':
-      return and(isHere, hasCourse);
-    case 'ready':
+      return and(isHere, or(hasFinishedCourse, and(hasOpenCourse, sql`not ${hasWindowLeft}`)));
     case 'too_early':
-      return and(isHere, isJoined, hasOpenCourse, isSigned);
+      return and(isHere, isEquipped, sql`not ${isHeld}`);
+    case 'ready':
+      return and(isHere, isEquipped, sql`not ${isHeld}`, hasOpenWindow);
     case 'training':
       return and(isHere, isJoined);
   }

@@ -14,21 +14,25 @@ export interface PlannedCounts {
 }
 
 /**
- * Planned sessions with what became of each, as the strip and adherence count them: a session that began stands for the planned one, and
- * what was moved or cancelled leaves the count unless something was delivered in it.
+ * Planned sessions of `people` with what became of each, as the strip and adherence count them: a session that began stands for the planned
+ * one, and what was moved or cancelled leaves the count unless something was delivered in it. One pass, whatever the number of people.
  */
-const plannedStates = sql.raw(`(
-  select p.participant_id, p.id, case
-    when s.closed_at is not null then coalesce(s.completeness, 'not_delivered')
-    when s.id is not null or p.closed_why is null then 'future'
-    when p.closed_why in ('missed', 'excused', 'cancelled', 'moved') then p.closed_why
-    else 'not_delivered' end as state
-  from planned_session p
-  left join lateral (
-    select s.id, s.closed_at, s.completeness from session s
-    where s.course_id = p.course_id and s.planned_session_id = p.id
-      and s.started_at is not null and s.closed_why is distinct from 'unused'
-    order by s.started_at desc limit 1) s on true)`);
+const statesOfPeople = sql.raw(`
+  of_planned as (
+    select distinct on (s.planned_session_id) s.planned_session_id, s.closed_at, s.completeness
+    from session s join people on people.id = s.participant_id
+    where s.started_at is not null and s.closed_why is distinct from 'unused'
+    order by s.planned_session_id, s.started_at desc),
+  states as (
+    select c.participant_id, case
+      when s.closed_at is not null then coalesce(s.completeness, 'not_delivered')
+      when s.planned_session_id is not null or p.closed_why is null then 'future'
+      when p.closed_why in ('missed', 'excused', 'cancelled', 'moved') then p.closed_why
+      else 'not_delivered' end as state
+    from people
+    join course c on c.participant_id = people.id
+    join planned_session p on p.course_id = c.id
+    left join of_planned s on s.planned_session_id = p.id)`);
 
 const countsOf = sql.raw(`
   count(*) filter (where x.state = 'complete')::int as complete,
@@ -79,13 +83,12 @@ export async function listReportRows(
     worst_effect: number | null;
     open_lockouts: number;
   }>(sql`
-    with people as (${people})
-    select people.id, people.code, counted.*,
+    with people as (${people}), ${statesOfPeople}
+    select people.id, people.code, ${countsOf},
       (select max(d.worst_strength)::int from diary d where d.participant_id = people.id) as worst_effect,
       (select count(*)::int from lockout l where l.participant_id = people.id and ${isLockedNow(now)}) as open_lockouts
-    from people
-    cross join lateral (select ${countsOf} from ${plannedStates} x where x.participant_id = people.id) counted
-    order by people.code, people.id`);
+    from people left join states x on x.participant_id = people.id
+    group by people.id, people.code order by people.code, people.id`);
   return rows.map((row) => ({
     participantId: row.id,
     code: row.code,
@@ -112,11 +115,11 @@ export async function readReportTotals(db: Db, siteIds: readonly string[], now: 
     participants: number;
     open_lockouts: number;
   }>(sql`
-    with people as (select id from participant where site_id = ${listed(siteIds)})
+    with people as (select id from participant where site_id = ${listed(siteIds)}), ${statesOfPeople}
     select ${countsOf},
       (select count(*)::int from people) as participants,
       (select count(*)::int from lockout l join people on people.id = l.participant_id where ${isLockedNow(now)}) as open_lockouts
-    from ${plannedStates} x join people on people.id = x.participant_id`);
+    from states x`);
   const [row] = rows;
   if (!row) throw new Error('a sum over nothing is still a row');
   const { not_delivered: notDelivered, open_lockouts: openLockouts, complete, partial, missed, participants } = row;

@@ -139,6 +139,10 @@ export async function lockStaff(db: Db, siteIds: readonly string[], accountId: s
   return row ? (staffOf(row)[0] ?? null) : null;
 }
 
-export async function setAccountState(db: Db, accountId: string, state: 'active' | 'suspended'): Promise<void> {
+export async function setAccountState(
+  db: Db,
+  accountId: string,
+  state: 'active' | 'suspended' | 'closed',
+): Promise<void> {
   await db.update(account).set({ state }).where(eq(account.id, accountId));
 }

@@ -35,7 +35,14 @@ export const recordGraceSeconds = 120;
 export const nextDayAskedDays = 3;
 
 /** Skin photos: enough of one session, sharp enough to see redness, small enough for a phone's network. Own choices. */
-export const photoLimits = { mostPerSession: 5, mostPixels: 40_000_000, longestSidePixels: 1600, mostBytes: 8_000_000, jpegQuality: 82, signatureBytes: 12 } as const;
+export const photoLimits = {
+  mostPerSession: 5,
+  mostPixels: 40_000_000,
+  longestSidePixels: 1600,
+  mostBytes: 8_000_000,
+  jpegQuality: 82,
+  signatureBytes: 12,
+} as const;
 
 /** Notices to a person wait for the morning between these local hours (guidance R70). */
 export const quietHours = { from: '21:00', to: '08:00' } as const;
@@ -46,8 +53,8 @@ export const nudgeLifeHours = 24;
 /** Two sessions running that ended by lost contact hold the device (safety rules §7). */
 export const lostContactLooksBack = 2;
 
-/** People whose state is judged in one go while a list looks for one state: few statements, little memory. Own choice. */
-export const peopleJudgedAtOnce = 200;
+/** People whose state is judged in one go while a list looks for one state: few statements, still little memory. Own choice. */
+export const peopleJudgedAtOnce = 1000;
 
 /** Rows of an export that are read in one go: each slice is turned into text before the next one is read. Own choice. */
 export const exportSliceRows = 1000;

@@ -3,7 +3,10 @@
 import { randomUUID } from 'node:crypto';
 import pg from 'pg';
 import { z } from 'zod';
+import { closeCourse } from '@/db/queries/course-state';
+import { insertLockout } from '@/db/queries/lockout';
 import type { AccountActor } from '@/server/action';
+import { pauseCourse } from '@/server/features/course/pause-course';
 import { enrolParticipant } from '@/server/features/participant/enrol-participant';
 import { inviteAgain } from '@/server/features/participant/invite-again';
 import { listParticipants } from '@/server/features/participant/list-participants';
@@ -11,6 +14,7 @@ import { readParticipant } from '@/server/features/participant/read-participant'
 import { readTimeline } from '@/server/features/participant/read-timeline';
 import { readTrends } from '@/server/features/participant/read-trends';
 import { withdrawParticipant } from '@/server/features/participant/withdraw-participant';
+import { participantStates } from '@/shared/contracts/participant';
 import { openClinic, type Clinic, type Patient } from '../support/clinic';
 import { inForce } from '../support/prescribing';
 import { keepDiary, makeReady } from '../support/records';
@@ -274,13 +278,15 @@ describe('a person who goes through a course', () => {
         prescription: z.string(),
         consents: z.number(),
         due: z.number(),
+        account: z.string(),
       },
       `select (select closed_why from permit where id = $2) as permit,
         (select closed_why from course where participant_id = $1) as course,
         (select count(*)::int from planned_session where participant_id = $1 and closed_at is null) as open,
         (select closed_why from prescription where participant_id = $1) as prescription,
         (select count(*)::int from consent where participant_id = $1 and closed_at is null) as consents,
-        (select count(*)::int from worklist_item where participant_id = $1 and why = 'device_return' and level = 'due') as due`,
+        (select count(*)::int from worklist_item where participant_id = $1 and why = 'device_return' and level = 'due') as due,
+        (select a.state from account a join participant p on p.account_id = a.id where p.id = $1) as account`,
       [patient.participantId, permitId],
     );
     expect(ends).toEqual({
@@ -290,6 +296,7 @@ describe('a person who goes through a course', () => {
       prescription: 'course_ended',
       consents: 0,
       due: 1,
+      account: 'closed',
     });
     const view = await clinic.call(clinician, readParticipant, { params: params() });
     expect(view).toMatchObject({
@@ -352,6 +359,58 @@ describe('the list of participants', () => {
     expect(invited.map(({ state }) => state)).toEqual(Array.from({ length: 7 }, () => 'invited'));
     expect((await walk({ state: 'training' })).map(({ name }) => name)).toEqual(['Quentin Joined']);
     expect(await walk({ state: 'ready' })).toEqual([]);
+  });
+
+  it('finds by each state exactly the people whom the whole list says are in it', async () => {
+    const stateSiteId = await clinic.site('ST');
+    const keeper = await clinic.staff('Sam States', 'clinician', stateSiteId);
+    const goingOn = async (name: string) => {
+      const patient = await clinic.patient(name, stateSiteId);
+      await makeReady(clinic, keeper, patient, stateSiteId);
+      await inForce(clinic, keeper, patient);
+      return patient;
+    };
+    await goingOn('Ready');
+    await recordSession(clinic, await goingOn('Too Early'));
+    const held = await goingOn('Held');
+    const openedAt = await clinic.now();
+    const lockout = { level: 'review', code: 'headache_high', source: 'staff', sourceId: null, until: null } as const;
+    await insertLockout(clinic.client.db, {
+      id: randomUUID(),
+      participantId: held.participantId,
+      openedAt,
+      ...lockout,
+    });
+    const { course } = await clinic.call(keeper, readParticipant, {
+      params: { participantId: (await goingOn('Paused')).participantId },
+    });
+    await clinic.call(keeper, pauseCourse, {
+      params: { courseId: course?.id ?? '' },
+      body: { paused: true, reason: 'Holiday' },
+    });
+    const done = await clinic.call(keeper, readParticipant, {
+      params: { participantId: (await goingOn('Finished')).participantId },
+    });
+    await closeCourse(clinic.client.db, done.course?.id ?? '', await clinic.now(), 'finished');
+    const gone = await goingOn('Withdrawn');
+    await clinic.call(keeper, withdrawParticipant, {
+      params: { participantId: gone.participantId },
+      body: { reason: 'Moves' },
+    });
+    await clinic.patient('Training', stateSiteId);
+    await clinic.call(keeper, enrolParticipant, {
+      body: person('state@harrowmere.example', { siteId: stateSiteId, name: 'Invited' }),
+    });
+
+    const whole = (await clinic.call(keeper, listParticipants, {})).items;
+    expect(whole.map(({ name, state }) => [name.toLowerCase().replace(' ', '_'), state])).toEqual(
+      whole.map(({ state }) => [state, state]),
+    );
+    expect(new Set(whole.map(({ state }) => state))).toEqual(new Set(participantStates));
+    for (const state of participantStates) {
+      const found = await clinic.call(keeper, listParticipants, { query: { state } });
+      expect(found.items.map(({ state: is }) => is)).toEqual([state]);
+    }
   });
 
   it('takes what is typed by its letters, never as a pattern', async () => {

@@ -31,6 +31,7 @@ export async function findPage(
   want: ParticipantWanted,
   now: string,
 ): Promise<{ page: JudgedParticipant[]; nextCursor: string | null }> {
+  // Whoever looks for a rare state reads on in large slices: the number of statements is that of the slices, not of the people.
   const size = want.state === undefined ? want.limit + 1 : Math.max(want.limit + 1, peopleJudgedAtOnce);
   const found: JudgedParticipant[] = [];
   let { after } = want;

@@ -9,6 +9,7 @@ import { closeParticipant } from '@/db/queries/participant';
 import { voidLivePermit } from '@/db/queries/permit';
 import { closePrescription, discardDrafts, findPrescriptionInForce } from '@/db/queries/prescription';
 import { lockParticipantInReach } from '@/db/queries/reach';
+import { setAccountState } from '@/db/queries/site';
 import { openItem } from '@/db/queries/worklist';
 import { action, notFound, refuse, type Tx } from '@/server/action';
 import { withdrawParticipant as contract } from '@/shared/contracts/participant';
@@ -27,6 +28,8 @@ export const withdrawParticipant = action(contract, async ({ actor, params, body
   await closeConsents(tx.db, participant.id, now);
   await closeInvitationsOf(tx.db, participant.id, now, 'withdrawn');
   await closeParticipant(tx.db, participant.id, now);
+  // A closed account still reads and takes away its own record; it is cleared for nothing any more.
+  if (participant.accountId !== null) await setAccountState(tx.db, participant.accountId, 'closed');
   const device = await loadDeviceFor(tx.db, participant.id);
   if (device) {
     await openItem(tx.db, {
