@@ -64,7 +64,13 @@ export interface PhotoMark {
 export async function listPhotos(db: Db, sessionIds: readonly string[]): Promise<PhotoMark[]> {
   if (sessionIds.length === 0) return [];
   return db
-    .select({ id: photo.id, sessionId: photo.sessionId, takenAt: photo.createdAt, width: photo.width, height: photo.height })
+    .select({
+      id: photo.id,
+      sessionId: photo.sessionId,
+      takenAt: photo.createdAt,
+      width: photo.width,
+      height: photo.height,
+    })
     .from(photo)
     .where(inArray(photo.sessionId, [...sessionIds]))
     .orderBy(asc(photo.createdAt), asc(photo.id));
@@ -88,5 +94,7 @@ export async function listEarlierReports(
     .groupBy(session.id, session.startedAt)
     .orderBy(desc(session.startedAt))
     .limit(limit);
-  return rows.map(({ headache, worstGrade }) => ({ headache: headache ?? 0, worstGrade: worstGrade ?? 'none' })).reverse();
+  return rows
+    .map(({ headache, worstGrade }) => ({ headache: headache ?? 0, worstGrade: worstGrade ?? 'none' }))
+    .reverse();
 }

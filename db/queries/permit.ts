@@ -35,7 +35,13 @@ export interface PermitRecord {
 
 function selectPermits(db: Db) {
   return db
-    .select({ permit, prescription, sessionId: session.id, plannedSessionId: session.plannedSessionId, siteId: participant.siteId })
+    .select({
+      permit,
+      prescription,
+      sessionId: session.id,
+      plannedSessionId: session.plannedSessionId,
+      siteId: participant.siteId,
+    })
     .from(permit)
     .innerJoin(session, eq(session.permitId, permit.id))
     .innerJoin(prescription, eq(prescription.id, permit.prescriptionId))
@@ -130,7 +136,10 @@ export async function voidLivePermit(
 ): Promise<{ id: string } | null> {
   const [closed] = await db
     .update(permit)
-    .set({ closedAt: at, closedWhy: sql`case when ${permit.expiresAt} <= ${at} then 'expired' else ${`void_${cause}`} end` })
+    .set({
+      closedAt: at,
+      closedWhy: sql`case when ${permit.expiresAt} <= ${at} then 'expired' else ${`void_${cause}`} end`,
+    })
     .where(and(eq(permit.participantId, participantId), isNull(permit.closedAt)))
     .returning({ id: permit.id, why: permit.closedWhy });
   return closed && closed.why !== 'expired' ? { id: closed.id } : null;

@@ -20,12 +20,18 @@ export async function insertPhoto(db: Db, row: NewPhoto): Promise<void> {
 }
 
 export async function countPhotos(db: Db, sessionId: string): Promise<number> {
-  const [row] = await db.select({ count: sql<number>`count(*)::int` }).from(photo).where(eq(photo.sessionId, sessionId));
+  const [row] = await db
+    .select({ count: sql<number>`count(*)::int` })
+    .from(photo)
+    .where(eq(photo.sessionId, sessionId));
   return row?.count ?? 0;
 }
 
 /** Whose photo it is. */
-export async function findPhotoOwner(db: Db, photoId: string): Promise<{ participantId: string; sessionId: string } | null> {
+export async function findPhotoOwner(
+  db: Db,
+  photoId: string,
+): Promise<{ participantId: string; sessionId: string } | null> {
   const [row] = await db
     .select({ participantId: photo.participantId, sessionId: photo.sessionId })
     .from(photo)

@@ -10,13 +10,16 @@ import { permit, session, sessionEvent } from '@/db/schema/session';
 import { coulombOf, secondsOf } from '@/shared/values/units';
 import { doseOf, type DoseRecord } from './dose';
 
+/** A record of an older shape has less to show; it is still a record. */
 const storedSummary = z.object({
-  curve: z.array(z.tuple([z.number(), z.number()])),
-  contact: z.array(z.object({ position: z.string(), worstKiloohm: z.number().nullable(), lastKiloohm: z.number().nullable() })),
-  pauses: z.array(z.object({ atSeconds: z.number(), lengthSeconds: z.number() })),
-  sensations: z.array(z.object({ atSeconds: z.number(), sensation: z.string(), strength: z.number() })),
-  gaps: z.array(z.object({ fromSeconds: z.number(), toSeconds: z.number() })),
-  conflicts: z.number(),
+  curve: z.array(z.tuple([z.number(), z.number()])).default([]),
+  contact: z
+    .array(z.object({ position: z.string(), worstKiloohm: z.number().nullable(), lastKiloohm: z.number().nullable() }))
+    .default([]),
+  pauses: z.array(z.object({ atSeconds: z.number(), lengthSeconds: z.number() })).default([]),
+  sensations: z.array(z.object({ atSeconds: z.number(), sensation: z.string(), strength: z.number() })).default([]),
+  gaps: z.array(z.object({ fromSeconds: z.number(), toSeconds: z.number() })).default([]),
+  conflicts: z.number().default(0),
 });
 export type StoredSummary = z.infer<typeof storedSummary>;
 
@@ -34,11 +37,24 @@ export interface SessionRecord {
   endReason: string | null;
   closedAt: string | null;
   closedWhy: string | null;
-  permit: { closedWhy: string | null; issuedAt: string; expiresAt: string; deviceId: string; prescriptionVersion: number; minGapMs: number };
+  permit: {
+    closedWhy: string | null;
+    issuedAt: string;
+    expiresAt: string;
+    deviceId: string;
+    prescriptionVersion: number;
+    minGapMs: number;
+  };
   dose: DoseRecord;
   sessionsTotal: number;
   /** Null until the record is whole, and where nothing is known to have been measured. */
-  delivered: { chargeCoulomb: number | null; upperChargeCoulomb: number; seconds: number; fraction: number; completeness: 'complete' | 'partial' | 'not_delivered' } | null;
+  delivered: {
+    chargeCoulomb: number | null;
+    upperChargeCoulomb: number;
+    seconds: number;
+    fraction: number;
+    completeness: 'complete' | 'partial' | 'not_delivered';
+  } | null;
   summary: StoredSummary | null;
 }
 
@@ -53,7 +69,13 @@ function selectSessions(db: Db) {
 
 type SessionRow = Awaited<ReturnType<typeof selectSessions>>[number];
 
-function deliveredOf({ upperUc, completeness, deliveredUc, onMs, fractionPermille }: SessionRow['session']): SessionRecord['delivered'] {
+function deliveredOf({
+  upperUc,
+  completeness,
+  deliveredUc,
+  onMs,
+  fractionPermille,
+}: SessionRow['session']): SessionRecord['delivered'] {
   if (upperUc === null || completeness === null) return null;
   return {
     chargeCoulomb: deliveredUc === null ? null : coulombOf(deliveredUc),
@@ -81,7 +103,14 @@ function recordOf(row: SessionRow): SessionRecord {
     endReason: own.endReason,
     closedAt: own.closedAt,
     closedWhy: own.closedWhy,
-    permit: { closedWhy, issuedAt, expiresAt, deviceId, prescriptionVersion: row.prescription.version ?? 0, minGapMs: row.prescription.minGapMs },
+    permit: {
+      closedWhy,
+      issuedAt,
+      expiresAt,
+      deviceId,
+      prescriptionVersion: row.prescription.version ?? 0,
+      minGapMs: row.prescription.minGapMs,
+    },
     dose: doseOf(row.prescription),
     sessionsTotal: row.prescription.sessionsTotal,
     delivered: deliveredOf(own),
@@ -109,7 +138,13 @@ export async function listBegunSessions(
     page.after &&
     or(lt(session.startedAt, page.after.at), and(eq(session.startedAt, page.after.at), lt(session.id, page.after.id)));
   const rows = await selectSessions(db)
-    .where(and(eq(session.participantId, participantId), sql`${session.startedAt} is not null and ${session.closedWhy} is distinct from 'unused'`, after ?? undefined))
+    .where(
+      and(
+        eq(session.participantId, participantId),
+        sql`${session.startedAt} is not null and ${session.closedWhy} is distinct from 'unused'`,
+        after ?? undefined,
+      ),
+    )
     .orderBy(desc(session.startedAt), desc(session.id))
     .limit(page.limit);
   return rows.map(recordOf);
@@ -130,12 +165,18 @@ export async function insertSession(db: Db, row: NewSession): Promise<void> {
 
 /** Sets the start, once. */
 export async function startSession(db: Db, sessionId: string, startedAt: string): Promise<void> {
-  await db.update(session).set({ startedAt }).where(and(eq(session.id, sessionId), isNull(session.startedAt)));
+  await db
+    .update(session)
+    .set({ startedAt })
+    .where(and(eq(session.id, sessionId), isNull(session.startedAt)));
 }
 
 /** Sets the end as the device told it, once; the session stays open until its record is whole. */
 export async function endSession(db: Db, sessionId: string, endedAt: string, endReason: string): Promise<void> {
-  await db.update(session).set({ endedAt, endReason }).where(and(eq(session.id, sessionId), isNull(session.endedAt)));
+  await db
+    .update(session)
+    .set({ endedAt, endReason })
+    .where(and(eq(session.id, sessionId), isNull(session.endedAt)));
 }
 
 export interface SessionClosing {
@@ -178,7 +219,12 @@ export async function insertEvents(db: Db, sessionId: string, rows: readonly Eve
 /** Id, place and hash of every event that is kept: enough to tell new from known. */
 export async function listKeptEvents(db: Db, sessionId: string) {
   return db
-    .select({ id: sessionEvent.id, sequence: sessionEvent.sequence, kind: sessionEvent.kind, contentHash: sessionEvent.contentHash })
+    .select({
+      id: sessionEvent.id,
+      sequence: sessionEvent.sequence,
+      kind: sessionEvent.kind,
+      contentHash: sessionEvent.contentHash,
+    })
     .from(sessionEvent)
     .where(eq(sessionEvent.sessionId, sessionId));
 }

@@ -1,6 +1,11 @@
 // Stored diary pages as they are told, after and next day apart. What their answers lead to is lockout.ts.
 
-import { diaryAnswersSchema, nextDayAnswersSchema, type DiaryAnswers, type NextDayAnswers } from '@/shared/values/diary-answers';
+import {
+  diaryAnswersSchema,
+  nextDayAnswersSchema,
+  type DiaryAnswers,
+  type NextDayAnswers,
+} from '@/shared/values/diary-answers';
 
 export type StoredPage = {
   readonly id: string;
@@ -10,7 +15,13 @@ export type StoredPage = {
   readonly emergencyAdvice: boolean;
   readonly writtenAt: string;
 };
-type Photo = { readonly id: string; readonly sessionId: string; readonly takenAt: string; readonly width: number; readonly height: number };
+type Photo = {
+  readonly id: string;
+  readonly sessionId: string;
+  readonly takenAt: string;
+  readonly width: number;
+  readonly height: number;
+};
 type Locked = { readonly sourceId: string | null; readonly level: string; readonly code: string };
 
 export type PageView = {
@@ -33,7 +44,12 @@ function withoutWords<T extends { freeText?: string | undefined }>(answers: T, r
 }
 
 /** Photos belong to the session and are told with its diary. */
-export function pageView(page: StoredPage, photos: readonly Photo[], locked: readonly Locked[], reader: Reader): PageView {
+export function pageView(
+  page: StoredPage,
+  photos: readonly Photo[],
+  locked: readonly Locked[],
+  reader: Reader,
+): PageView {
   const isAfter = page.kind === 'after';
   return {
     id: page.id,
@@ -61,7 +77,9 @@ export function pagesOf(
   locked: readonly Locked[],
   reader: Reader,
 ): { diary: PageView | null; nextDay: PageView | null } {
-  const own = pages.filter((page) => page.sessionId === sessionId).map((page) => pageView(page, photos, locked, reader));
+  const own = pages
+    .filter((page) => page.sessionId === sessionId)
+    .map((page) => pageView(page, photos, locked, reader));
   return {
     diary: own.find(({ kind }) => kind === 'after') ?? null,
     nextDay: own.find(({ kind }) => kind === 'next_day') ?? null,

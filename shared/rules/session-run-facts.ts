@@ -24,7 +24,9 @@ export function runFactsOf(
   nearSamples: readonly RecordedEvent[],
   permittedMilliamp: number,
 ): NonNullable<LockoutFacts['during']> {
-  const flags = events.flatMap(({ kind, flag }): RedFlag[] => redFlags.filter((each) => kind === 'red_flag' && each === flag));
+  const flags = events.flatMap(({ kind, flag }): RedFlag[] =>
+    redFlags.filter((each) => kind === 'red_flag' && each === flag),
+  );
   const pains = events.flatMap(({ kind, sensation = '', strength }) => {
     if (kind !== 'sensation' || strength === undefined) return [];
     return (sensation === padPain ? strength : padPainOf(sensation, strength)) ?? [];

@@ -73,7 +73,11 @@ export function latestSecondsOf(event: RecordedEvent): number {
 }
 
 /** Times from the start of a ramp down to the start of the next ramp up. */
-function pausesOf(dose: TrapezoidFacts, events: readonly RecordedEvent[], endSeconds: number): SessionSummary['pauses'] {
+function pausesOf(
+  dose: TrapezoidFacts,
+  events: readonly RecordedEvent[],
+  endSeconds: number,
+): SessionSummary['pauses'] {
   const points = runCurve(dose, wordsOf(events), endSeconds);
   const pauses: SessionSummary['pauses'] = [];
   let downFrom: number | undefined;
@@ -101,12 +105,18 @@ function contactOf(events: readonly RecordedEvent[]): ContactSummary[] {
     if (kind === 'contact' && position !== undefined) see(position, kiloohm ?? null);
     for (const [at, value] of impedance) see(at, value);
   }
-  return [...byPosition.values()].map(({ position, worstKiloohm, lastKiloohm }) => ({ position, worstKiloohm, lastKiloohm }));
+  return [...byPosition.values()].map(({ position, worstKiloohm, lastKiloohm }) => ({
+    position,
+    worstKiloohm,
+    lastKiloohm,
+  }));
 }
 
 /** Every so many samples, the largest of each stretch and the last of all. */
 function thinned(samples: readonly Sample[]): [number, number][] {
-  const points = samples.flatMap(([seconds, milliamp]): [number, number][] => (milliamp === null ? [] : [[seconds, milliamp]]));
+  const points = samples.flatMap(([seconds, milliamp]): [number, number][] =>
+    milliamp === null ? [] : [[seconds, milliamp]],
+  );
   points.sort((a, b) => a[0] - b[0]);
   const stretch = Math.ceil(points.length / (mostCurvePoints - 1));
   if (stretch <= 1) return points;
@@ -122,7 +132,10 @@ function thinned(samples: readonly Sample[]): [number, number][] {
 }
 
 /** What was delivered; the tail up to the device's own end counts as a gap if no sample covers it. */
-export function amountsOf(dose: TrapezoidFacts & { readonly chargeCoulomb: number }, events: readonly RecordedEvent[]): SessionAmounts {
+export function amountsOf(
+  dose: TrapezoidFacts & { readonly chargeCoulomb: number },
+  events: readonly RecordedEvent[],
+): SessionAmounts {
   const ended = events.find(({ kind }) => kind === 'ended');
   const samples = samplesOf(events);
   const last = samples.reduce((latest, [seconds]) => Math.max(latest, seconds), 0);
@@ -146,14 +159,20 @@ export function amountsOf(dose: TrapezoidFacts & { readonly chargeCoulomb: numbe
   };
 }
 
-export function summaryOf(dose: TrapezoidFacts, events: readonly RecordedEvent[], amounts: SessionAmounts): SessionSummary {
+export function summaryOf(
+  dose: TrapezoidFacts,
+  events: readonly RecordedEvent[],
+  amounts: SessionAmounts,
+): SessionSummary {
   const { delivered, endedAtSeconds } = amounts;
   return {
     curve: thinned(samplesOf(events)),
     contact: contactOf(events),
     pauses: pausesOf(dose, events, endedAtSeconds),
     sensations: events.flatMap(({ kind, atSeconds, sensation, strength }) =>
-      kind === 'sensation' && sensation !== undefined && strength !== undefined ? [{ atSeconds, sensation, strength }] : [],
+      kind === 'sensation' && sensation !== undefined && strength !== undefined
+        ? [{ atSeconds, sensation, strength }]
+        : [],
     ),
     gaps: delivered.gaps.map(({ fromSeconds, toSeconds }) => ({ fromSeconds, toSeconds })),
     conflicts: delivered.conflicts.length,

@@ -54,9 +54,21 @@ it('names every reason at once, each with a sentence and who resolves it, for so
   const patient = await clinic.patient('Just Invited', siteId);
   const clearance = await read(patient);
   expect(clearance.reasons.map(({ code }) => code)).toEqual(
-    expect.arrayContaining(['consent_missing', 'screening_incomplete', 'training_missing', 'prescription_unsigned', 'device_unassigned']),
+    expect.arrayContaining([
+      'consent_missing',
+      'screening_incomplete',
+      'training_missing',
+      'prescription_unsigned',
+      'device_unassigned',
+    ]),
   );
-  expect(clearance).toMatchObject({ allowed: false, readyForPrecheck: false, courseId: null, nextSession: null, dose: null });
+  expect(clearance).toMatchObject({
+    allowed: false,
+    readyForPrecheck: false,
+    courseId: null,
+    nextSession: null,
+    dose: null,
+  });
   for (const reason of clearance.reasons) expect(reason.sentence).not.toBe('');
   const unsigned = clearance.reasons.find(({ code }) => code === 'prescription_unsigned');
   expect(unsigned).toMatchObject({ resolvedBy: 'clinician', contact: { phone: '020 7946 0100' } });
@@ -93,8 +105,18 @@ it('counts a finished session: the gap, the day and the diary stand in the way u
   const permit = await runSession(clinic, ready);
   const clearance = await read(ready.patient);
   const until = new Map(clearance.reasons.map((reason) => [reason.code, reason.until]));
-  expect([...until.keys()]).toEqual(['outside_hours', 'gap_too_short', 'day_count_reached', 'diary_missing', 'precheck_missing']);
-  expect(clearance).toMatchObject({ diaryDueSessionId: permit.sessionId, openSessionId: null, nextSession: { number: 2 } });
+  expect([...until.keys()]).toEqual([
+    'outside_hours',
+    'gap_too_short',
+    'day_count_reached',
+    'diary_missing',
+    'precheck_missing',
+  ]);
+  expect(clearance).toMatchObject({
+    diaryDueSessionId: permit.sessionId,
+    openSessionId: null,
+    nextSession: { number: 2 },
+  });
   expect(Date.parse(String(until.get('gap_too_short'))) - Date.parse(clearance.asOf)).toBeGreaterThan(19 * 3_600_000);
 });
 
@@ -104,7 +126,9 @@ it('counts the whole dose of a session whose record is not whole, and says that 
   expect(await codesFor(ready.patient)).toContain('live_permit');
   await clinic.advance(31 * 60);
   const clearance = await read(ready.patient);
-  expect(clearance.reasons.map(({ code }) => code)).toEqual(expect.arrayContaining(['session_open', 'day_count_reached', 'gap_too_short']));
+  expect(clearance.reasons.map(({ code }) => code)).toEqual(
+    expect.arrayContaining(['session_open', 'day_count_reached', 'gap_too_short']),
+  );
   expect(clearance).toMatchObject({ openSessionId: permit.sessionId, livePermitId: null });
 });
 
@@ -115,9 +139,15 @@ it('is answered to staff of the site and to nobody else, and every look is on re
   expect((await read(monitor, courseId)).participantId).toBe(patient.participantId);
   const other = await clinic.patient('Somebody Else', siteId);
   for (const who of [stranger, other]) {
-    expect(await clinic.refused(who, readClearance, { query: { courseId } })).toMatchObject({ status: 404, code: 'not_found' });
+    expect(await clinic.refused(who, readClearance, { query: { courseId } })).toMatchObject({
+      status: 404,
+      code: 'not_found',
+    });
   }
-  expect(await clinic.refused(monitor, readClearance, { query: {} })).toMatchObject({ status: 422, fields: [{ path: 'courseId' }] });
+  expect(await clinic.refused(monitor, readClearance, { query: {} })).toMatchObject({
+    status: 422,
+    fields: [{ path: 'courseId' }],
+  });
   const [looks] = await clinic.rows(
     { n: z.number() },
     `select count(*)::int n from audit_entry where participant_id = $1 and action = 'clearance.read' and kind = 'read' and actor_id = $2`,

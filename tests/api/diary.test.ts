@@ -23,16 +23,30 @@ beforeAll(async () => {
 afterAll(() => clinic.close());
 
 const nothing: DiaryAnswers = { nothingFelt: true, effects: [], headacheAfter: 0, skin: 'ok', redFlags: [] };
-const felt = (kind: 'tingling' | 'headache', strength: number): Partial<DiaryAnswers> => ({ nothingFelt: false, effects: [{ kind, strength, stillThere: false }] });
+const felt = (kind: 'tingling' | 'headache', strength: number): Partial<DiaryAnswers> => ({
+  nothingFelt: false,
+  effects: [{ kind, strength, stillThere: false }],
+});
 
 const after = (change: Partial<DiaryAnswers> = {}) => ({ kind: 'after' as const, answers: { ...nothing, ...change } });
-const nextDay = (change: Partial<NextDayAnswers> = {}) => ({ kind: 'next_day' as const, answers: { rednessStillThere: false, headacheNextDay: 0, ...change } });
+const nextDay = (change: Partial<NextDayAnswers> = {}) => ({
+  kind: 'next_day' as const,
+  answers: { rednessStillThere: false, headacheNextDay: 0, ...change },
+});
 const write = (who: Patient, permit: PermitView, body: ReturnType<typeof after> | ReturnType<typeof nextDay>) =>
   clinic.call(who, writeDiary, { params: { sessionId: permit.sessionId }, body });
 const lockoutsOf = (patient: Patient) =>
-  clinic.rows({ level: z.string(), code: z.string() }, `select level, code from lockout where participant_id = $1 order by code`, [patient.participantId]);
+  clinic.rows(
+    { level: z.string(), code: z.string() },
+    `select level, code from lockout where participant_id = $1 order by code`,
+    [patient.participantId],
+  );
 const itemsOf = (patient: Patient) =>
-  clinic.rows({ level: z.string(), why: z.string(), facts: z.record(z.string(), z.unknown()) }, `select level, why, facts from worklist_item where participant_id = $1 order by why`, [patient.participantId]);
+  clinic.rows(
+    { level: z.string(), why: z.string(), facts: z.record(z.string(), z.unknown()) },
+    `select level, why, facts from worklist_item where participant_id = $1 order by why`,
+    [patient.participantId],
+  );
 
 async function ran(): Promise<{ ready: ReadyPatient; patient: Patient; permit: PermitView }> {
   const ready = await readyPatient(clinic, oona, siteId);
@@ -42,7 +56,12 @@ async function ran(): Promise<{ ready: ReadyPatient; patient: Patient; permit: P
 it('keeps what was felt, shows the first session to staff, and locks nothing', async () => {
   const { patient, permit } = await ran();
   const view = await write(patient, permit, after({ ...felt('tingling', 3), freeText: 'A little warm.' }));
-  expect(view).toMatchObject({ kind: 'after', lockouts: [], emergencyAdvice: false, after: { freeText: 'A little warm.' } });
+  expect(view).toMatchObject({
+    kind: 'after',
+    lockouts: [],
+    emergencyAdvice: false,
+    after: { freeText: 'A little warm.' },
+  });
   expect(await lockoutsOf(patient)).toEqual([]);
   expect(await itemsOf(patient)).toMatchObject([{ level: 'look', why: 'first_session' }]);
 });
@@ -51,7 +70,9 @@ it('puts a headache of 4 on the worklist with its strength, and not a word of wh
   const { patient, permit } = await ran();
   await write(patient, permit, after({ ...felt('headache', 4), headacheAfter: 4, freeText: 'Secret words' }));
   const items = await itemsOf(patient);
-  expect(items).toMatchObject([{ level: 'look', why: 'strong_effect', facts: { effect: 'headache', strength: 4, number: 1 } }]);
+  expect(items).toMatchObject([
+    { level: 'look', why: 'strong_effect', facts: { effect: 'headache', strength: 4, number: 1 } },
+  ]);
   expect(JSON.stringify(items)).not.toContain('Secret');
 });
 
@@ -62,7 +83,11 @@ it('locks for safety after broken skin, gives the advice first and pages', async
     lockouts: [{ code: 'burn_or_blister', level: 'safety' }],
   });
   expect(await lockoutsOf(patient)).toEqual([{ level: 'safety', code: 'burn_or_blister' }]);
-  const [mails] = await clinic.rows({ n: z.number() }, `select count(*)::int n from outbox where kind = 'page' and facts ->> 'code' = $1`, [patient.code]);
+  const [mails] = await clinic.rows(
+    { n: z.number() },
+    `select count(*)::int n from outbox where kind = 'page' and facts ->> 'code' = $1`,
+    [patient.code],
+  );
   expect(mails?.n).toBe(1);
 });
 
@@ -82,7 +107,9 @@ it('holds for review when three headaches running rise to 3', async () => {
   for (const strength of [1, 2, 3]) {
     const permit = await runSession(clinic, ready);
     await write(ready.patient, permit, after({ headacheAfter: strength }));
-    expect(await lockoutsOf(ready.patient)).toEqual(strength === 3 ? [{ level: 'review', code: 'headache_rising' }] : []);
+    expect(await lockoutsOf(ready.patient)).toEqual(
+      strength === 3 ? [{ level: 'review', code: 'headache_rising' }] : [],
+    );
     await clinic.advance(86_400);
   }
 });
@@ -98,16 +125,24 @@ it('asks staff to look when a photo was offered and has not come by the next day
 it('keeps the first page and refuses a second', async () => {
   const { patient, permit } = await ran();
   await write(patient, permit, after());
-  const second = await clinic.refused(patient, writeDiary, { params: { sessionId: permit.sessionId }, body: after({ headacheAfter: 9 }) });
+  const second = await clinic.refused(patient, writeDiary, {
+    params: { sessionId: permit.sessionId },
+    body: after({ headacheAfter: 9 }),
+  });
   expect(second).toMatchObject({ status: 409, code: 'diary.already_written' });
-  expect((await clinic.call(patient, readSession, { params: { sessionId: permit.sessionId } })).diary?.after?.headacheAfter).toBe(0);
+  expect(
+    (await clinic.call(patient, readSession, { params: { sessionId: permit.sessionId } })).diary?.after?.headacheAfter,
+  ).toBe(0);
 });
 
 it('refuses a diary before the session has ended, and anybody else’s', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const permit = await permitFor(clinic, ready);
   const given = { params: { sessionId: permit.sessionId }, body: after() };
-  expect(await clinic.refused(ready.patient, writeDiary, given)).toMatchObject({ status: 409, code: 'session.not_ended' });
+  expect(await clinic.refused(ready.patient, writeDiary, given)).toMatchObject({
+    status: 409,
+    code: 'session.not_ended',
+  });
   const other = await clinic.patient('Somebody Else', siteId);
   expect(await clinic.refused(other, writeDiary, given)).toMatchObject({ status: 404 });
 });
@@ -116,18 +151,27 @@ it('lists own sessions newest first, asks for the next day from the following da
   const ready = await readyPatient(clinic, oona, siteId);
   const first = await runSession(clinic, ready);
   await write(ready.patient, first, after(felt('tingling', 2)));
-  const dueOf = async () => (await clinic.call(ready.patient, listDiary, { query: {} })).items.map(({ nextDayDue }) => nextDayDue);
+  const dueOf = async () =>
+    (await clinic.call(ready.patient, listDiary, { query: {} })).items.map(({ nextDayDue }) => nextDayDue);
   expect(await dueOf()).toEqual([false]);
   await clinic.advance(86_400);
   expect(await dueOf()).toEqual([true]);
   const second = await runSession(clinic, ready);
   const page = await clinic.call(ready.patient, listDiary, { query: { limit: 1 } });
-  expect(page.items).toMatchObject([{ sessionId: second.sessionId, number: 2, diary: null, completeness: 'complete', intensityMilliamp: 2 }]);
+  expect(page.items).toMatchObject([
+    { sessionId: second.sessionId, number: 2, diary: null, completeness: 'complete', intensityMilliamp: 2 },
+  ]);
   const rest = await clinic.call(ready.patient, listDiary, { query: { limit: 1, cursor: page.nextCursor ?? '' } });
-  expect(rest).toMatchObject({ items: [{ sessionId: first.sessionId, number: 1, diary: { kind: 'after' } }], nextCursor: null });
+  expect(rest).toMatchObject({
+    items: [{ sessionId: first.sessionId, number: 1, diary: { kind: 'after' } }],
+    nextCursor: null,
+  });
   await clinic.advance(3 * 86_400);
   expect((await dueOf())[1]).toBe(false);
-  expect(await clinic.refused(ready.patient, listDiary, { query: { cursor: 'nonsense' } })).toMatchObject({ status: 422, fields: [{ path: 'cursor', code: 'cursor_unknown' }] });
+  expect(await clinic.refused(ready.patient, listDiary, { query: { cursor: 'nonsense' } })).toMatchObject({
+    status: 422,
+    fields: [{ path: 'cursor', code: 'cursor_unknown' }],
+  });
 });
 
 it('shows a monitor neither words nor photos', async () => {

@@ -14,7 +14,17 @@ import { makeTransact } from '@/server/transact';
 import { PermitClaims, type PermitView } from '@/shared/contracts/permit';
 import { openClinic, secretOfTests, type Clinic } from '../support/clinic';
 import { sign, write } from '../support/prescribing';
-import { answer, goToMorning, permitBody, permitFor, readyPatient, send, wholeRun, numbered, type ReadyPatient } from '../support/running';
+import {
+  answer,
+  goToMorning,
+  permitBody,
+  permitFor,
+  readyPatient,
+  send,
+  wholeRun,
+  numbered,
+  type ReadyPatient,
+} from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
@@ -32,22 +42,39 @@ const ask = (ready: ReadyPatient, precheckId: string, key: string) =>
   clinic.call(ready.patient, issuePermit, { body: permitBody(ready, precheckId), key });
 const refusedFor = async (ready: ReadyPatient, change: Partial<ReturnType<typeof permitBody>> = {}) => {
   const { id } = await answer(clinic, ready.patient);
-  return clinic.refused(ready.patient, issuePermit, { body: { ...permitBody(ready, id), ...change }, key: randomUUID() });
+  return clinic.refused(ready.patient, issuePermit, {
+    body: { ...permitBody(ready, id), ...change },
+    key: randomUUID(),
+  });
 };
 const stateOf = async (ready: ReadyPatient, permit: PermitView) => {
   const { state, voidedBy } = await clinic.call(ready.patient, readPermit, { params: { permitId: permit.id } });
   return [state, voidedBy];
 };
 const livePermits = (ready: ReadyPatient) =>
-  clinic.rows({ id: z.string() }, `select id from permit where participant_id = $1 and closed_at is null`, [ready.patient.participantId]);
+  clinic.rows({ id: z.string() }, `select id from permit where participant_id = $1 and closed_at is null`, [
+    ready.patient.participantId,
+  ]);
 
 it('gives one permit with its session, over 30 minutes later, and reserves the dose', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const permit = await permitFor(clinic, ready);
-  expect(permit).toMatchObject({ state: 'live', voidedBy: null, expiresBy: 'issue', counter: 1, prescriptionVersion: 1, sessionNumber: 1, sessionsTotal: 20 });
+  expect(permit).toMatchObject({
+    state: 'live',
+    voidedBy: null,
+    expiresBy: 'issue',
+    counter: 1,
+    prescriptionVersion: 1,
+    sessionNumber: 1,
+    sessionsTotal: 20,
+  });
   expect(Date.parse(permit.expiresAt) - Date.parse(permit.issuedAt)).toBe(30 * 60_000);
   expect(permit.dose).toMatchObject({ intensityMilliamp: 2, chargeCoulomb: 2.46, minutes: 21 });
-  const [session] = await clinic.rows({ id: z.string(), started_at: z.null(), closed_at: z.null() }, `select id, started_at, closed_at from session where permit_id = $1`, [permit.id]);
+  const [session] = await clinic.rows(
+    { id: z.string(), started_at: z.null(), closed_at: z.null() },
+    `select id, started_at, closed_at from session where permit_id = $1`,
+    [permit.id],
+  );
   expect(session?.id).toBe(permit.sessionId);
   await clinic.advance(30 * 60);
   expect(await stateOf(ready, permit)).toEqual(['expired', null]);
@@ -98,7 +125,12 @@ it('leaves exactly one live permit when 50 requests race through two processes, 
       Array.from({ length: 50 }, (_, index) => {
         const process = processes[index % 2];
         if (!process) throw new Error('no process');
-        const asked = { actor: ready.patient, params: undefined, query: undefined, body: permitBody(ready, precheckId) };
+        const asked = {
+          actor: ready.patient,
+          params: undefined,
+          query: undefined,
+          body: permitBody(ready, precheckId),
+        };
         return process.run(issuePermit, { ...asked, key: randomUUID(), file: null, requestId: randomUUID() });
       }),
     );
@@ -108,7 +140,11 @@ it('leaves exactly one live permit when 50 requests race through two processes, 
     await Promise.all(clients.map((client) => client.close()));
   }
   expect(await livePermits(ready)).toHaveLength(1);
-  const [audited] = await clinic.rows({ n: z.number() }, `select count(*)::int n from audit_entry where participant_id = $1 and action = 'permit.issue'`, [ready.patient.participantId]);
+  const [audited] = await clinic.rows(
+    { n: z.number() },
+    `select count(*)::int n from audit_entry where participant_id = $1 and action = 'permit.issue'`,
+    [ready.patient.participantId],
+  );
   expect(audited?.n).toBe(50);
 }, 60_000);
 
@@ -120,7 +156,11 @@ it('gives the same permit for the same key, with its present state, and never a 
   expect(await ask(ready, id, key)).toEqual(first);
   await clinic.advance(31 * 60);
   expect(await ask(ready, id, key)).toEqual({ ...first, state: 'expired' });
-  expect(await clinic.rows({ id: z.string() }, `select id from permit where participant_id = $1`, [ready.patient.participantId])).toHaveLength(1);
+  expect(
+    await clinic.rows({ id: z.string() }, `select id from permit where participant_id = $1`, [
+      ready.patient.participantId,
+    ]),
+  ).toHaveLength(1);
 });
 
 it('refuses the same key with another body', async () => {
@@ -129,7 +169,10 @@ it('refuses the same key with another body', async () => {
   const key = randomUUID();
   await ask(ready, id, key);
   const body = { ...permitBody(ready, id), batteryPercent: 81 };
-  expect(await clinic.refused(ready.patient, issuePermit, { body, key })).toMatchObject({ status: 409, code: 'idempotency.other_body' });
+  expect(await clinic.refused(ready.patient, issuePermit, { body, key })).toMatchObject({
+    status: 409,
+    code: 'idempotency.other_body',
+  });
 });
 
 it('refuses a second permit while one is live, and one pre-check for two permits', async () => {
@@ -143,12 +186,17 @@ it('refuses a second permit while one is live, and one pre-check for two permits
 it('refuses a flat battery, another device and another person’s pre-check, each by name, and writes nothing but the audit entry', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const other = await readyPatient(clinic, oona, siteId);
-  const codes = async (change: Parameters<typeof refusedFor>[1]) => (await refusedFor(ready, change)).reasons?.map(({ code }) => code);
+  const codes = async (change: Parameters<typeof refusedFor>[1]) =>
+    (await refusedFor(ready, change)).reasons?.map(({ code }) => code);
   expect(await codes({ batteryPercent: 29 })).toEqual(['battery_low']);
   expect(await codes({ deviceId: other.deviceId })).toEqual(['device_unassigned']);
   expect(await codes({ precheckId: (await answer(clinic, other.patient)).id })).toEqual(['precheck_missing']);
   expect(await livePermits(ready)).toEqual([]);
-  const kinds = await clinic.rows({ kind: z.string() }, `select kind from audit_entry where participant_id = $1 and action = 'permit.issue'`, [ready.patient.participantId]);
+  const kinds = await clinic.rows(
+    { kind: z.string() },
+    `select kind from audit_entry where participant_id = $1 and action = 'permit.issue'`,
+    [ready.patient.participantId],
+  );
   expect(kinds.map(({ kind }) => kind)).toEqual(['refusal', 'refusal', 'refusal']);
 });
 
@@ -161,8 +209,14 @@ it('refuses a course that is somebody else’s as if it were not there', async (
 it('voids a live permit by an amendment, and lets no permit out before the new version is confirmed', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const permit = await permitFor(clinic, ready);
-  const [version] = await clinic.rows({ id: z.string() }, `select id from prescription where course_id = $1`, [ready.courseId]);
-  const draft = await write(clinic, oona, ready.patient, { amendsId: version?.id, reason: 'Headaches', dose: { intensityMilliamp: 1.5 } });
+  const [version] = await clinic.rows({ id: z.string() }, `select id from prescription where course_id = $1`, [
+    ready.courseId,
+  ]);
+  const draft = await write(clinic, oona, ready.patient, {
+    amendsId: version?.id,
+    reason: 'Headaches',
+    dose: { intensityMilliamp: 1.5 },
+  });
   await sign(clinic, oona, draft);
   expect(await stateOf(ready, permit)).toEqual(['void', 'amended']);
   const refusal = await refusedFor(ready);
@@ -172,7 +226,10 @@ it('voids a live permit by an amendment, and lets no permit out before the new v
 it('voids a live permit by a pause', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const permit = await permitFor(clinic, ready);
-  await clinic.call(oona, pauseCourse, { params: { courseId: ready.courseId }, body: { paused: true, reason: 'Away' } });
+  await clinic.call(oona, pauseCourse, {
+    params: { courseId: ready.courseId },
+    body: { paused: true, reason: 'Away' },
+  });
   expect(await stateOf(ready, permit)).toEqual(['void', 'paused']);
 });
 
@@ -181,15 +238,32 @@ it('keeps the dose of an unused permit reserved until the stimulator’s own rec
   const permit = await permitFor(clinic, ready);
   await clinic.advance(31 * 60);
   expect((await refusedFor(ready)).reasons?.map(({ code }) => code)).toContain('session_open');
-  const unused = { kind: 'ended', atSeconds: 0, reason: 'permit_void', onSeconds: 0, chargeCoulomb: 0, lastSequence: 0 } as const;
-  expect(await send(clinic, ready.patient, permit, numbered([unused]))).toMatchObject({ sessionState: 'void', permit: { state: 'expired' } });
+  const unused = {
+    kind: 'ended',
+    atSeconds: 0,
+    reason: 'permit_void',
+    onSeconds: 0,
+    chargeCoulomb: 0,
+    lastSequence: 0,
+  } as const;
+  expect(await send(clinic, ready.patient, permit, numbered([unused]))).toMatchObject({
+    sessionState: 'void',
+    permit: { state: 'expired' },
+  });
   expect((await permitFor(clinic, ready)).sessionNumber).toBe(1);
 });
 
 it('gives the next permit a higher counter', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const first = await permitFor(clinic, ready);
-  await send(clinic, ready.patient, first, numbered([{ kind: 'ended', atSeconds: 0, reason: 'device_fault', onSeconds: 0, chargeCoulomb: 0, lastSequence: 0 }]));
+  await send(
+    clinic,
+    ready.patient,
+    first,
+    numbered([
+      { kind: 'ended', atSeconds: 0, reason: 'device_fault', onSeconds: 0, chargeCoulomb: 0, lastSequence: 0 },
+    ]),
+  );
   await clinic.advance(31 * 60);
   expect((await permitFor(clinic, ready)).counter).toBe(first.counter + 1);
 });
@@ -198,8 +272,18 @@ it('gives out at most ten permits an hour', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   for (let time = 0; time < 10; time += 1) {
     const permit = await permitFor(clinic, ready);
-    await send(clinic, ready.patient, permit, numbered([{ kind: 'ended', atSeconds: 0, reason: 'device_fault', onSeconds: 0, chargeCoulomb: 0, lastSequence: 0 }]));
-    await clinic.client.pool.query(`update permit set closed_at = $2, closed_why = 'expired' where id = $1`, [permit.id, await clinic.now()]);
+    await send(
+      clinic,
+      ready.patient,
+      permit,
+      numbered([
+        { kind: 'ended', atSeconds: 0, reason: 'device_fault', onSeconds: 0, chargeCoulomb: 0, lastSequence: 0 },
+      ]),
+    );
+    await clinic.client.pool.query(`update permit set closed_at = $2, closed_why = 'expired' where id = $1`, [
+      permit.id,
+      await clinic.now(),
+    ]);
   }
   expect(await refusedFor(ready)).toMatchObject({ status: 409, code: 'permit.too_many' });
   await clinic.advance(3600);
@@ -211,6 +295,10 @@ it('leaves a planned session open after one that was not delivered', async () =>
   const permit = await permitFor(clinic, ready);
   await clinic.advance(120);
   await send(clinic, ready.patient, permit, wholeRun(permit, 60, 'stopped'));
-  const [planned] = await clinic.rows({ closed_at: z.null() }, `select closed_at from planned_session where id = (select planned_session_id from session where id = $1)`, [permit.sessionId]);
+  const [planned] = await clinic.rows(
+    { closed_at: z.null() },
+    `select closed_at from planned_session where id = (select planned_session_id from session where id = $1)`,
+    [permit.sessionId],
+  );
   expect(planned?.closed_at).toBeNull();
 });

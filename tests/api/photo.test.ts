@@ -75,7 +75,10 @@ it('takes PNG and WebP, and gives them out as JPEG', async () => {
 });
 
 it('refuses by content whatever the file says of itself', async () => {
-  expect(await refusalOf(Buffer.from('<svg xmlns="http://www.w3.org/2000/svg" width="9" height="9"/>'))).toEqual([415, 'photo.type_not_allowed']);
+  expect(await refusalOf(Buffer.from('<svg xmlns="http://www.w3.org/2000/svg" width="9" height="9"/>'))).toEqual([
+    415,
+    'photo.type_not_allowed',
+  ]);
   expect(await refusalOf(await picture(9, 9).gif().toBuffer())).toEqual([415, 'photo.type_not_allowed']);
   expect(await refusalOf(Buffer.from('%PDF-1.7'))).toEqual([415, 'photo.type_not_allowed']);
   expect(await refusalOf(new Uint8Array())).toEqual([415, 'photo.type_not_allowed']);
@@ -84,12 +87,17 @@ it('refuses by content whatever the file says of itself', async () => {
 it('refuses a picture that is cut off, and one of too many pixels', async () => {
   const whole = await picture(400, 400).jpeg().toBuffer();
   expect(await refusalOf(whole.subarray(0, whole.length - 200))).toEqual([415, 'photo.unreadable']);
-  expect(await refusalOf(await picture(9000, 5000).png({ compressionLevel: 9 }).toBuffer())).toEqual([413, 'photo.too_large']);
+  expect(await refusalOf(await picture(9000, 5000).png({ compressionLevel: 9 }).toBuffer())).toEqual([
+    413,
+    'photo.too_large',
+  ]);
 });
 
 it('takes at most five of one session', async () => {
   const small = await picture(9, 9).png().toBuffer();
-  const [kept] = await clinic.rows({ n: z.number() }, `select count(*)::int n from photo where session_id = $1`, [permit.sessionId]);
+  const [kept] = await clinic.rows({ n: z.number() }, `select count(*)::int n from photo where session_id = $1`, [
+    permit.sessionId,
+  ]);
   for (let more = kept?.n ?? 0; more < 5; more += 1) await added(small);
   expect(await refusalOf(small)).toEqual([409, 'photo.too_many']);
 });
@@ -98,16 +106,24 @@ it('is for the participant and the clinic’s staff alone, and every look is on 
   const [photo] = await clinic.rows({ id: z.string() }, `select id from photo limit 1`);
   const photoId = photo?.id ?? '';
   await clinic.call(oona, readPhoto, { params: { photoId } });
-  const [looks] = await clinic.rows({ n: z.number() }, `select count(*)::int n from audit_entry where action = 'photo.read' and kind = 'read' and actor_id = $1`, [oona.accountId]);
+  const [looks] = await clinic.rows(
+    { n: z.number() },
+    `select count(*)::int n from audit_entry where action = 'photo.read' and kind = 'read' and actor_id = $1`,
+    [oona.accountId],
+  );
   expect(looks?.n).toBe(1);
   const other = await clinic.patient('Somebody Else', siteId);
   const stranger = await clinic.staff('Odd Man', 'clinician', await clinic.site('MR'));
-  for (const who of [other, stranger]) expect(await clinic.refused(who, readPhoto, { params: { photoId } })).toMatchObject({ status: 404 });
+  for (const who of [other, stranger])
+    expect(await clinic.refused(who, readPhoto, { params: { photoId } })).toMatchObject({ status: 404 });
   expect(await refusalOf(await picture(9, 9).png().toBuffer(), other)).toEqual([404, 'not_found']);
 });
 
 it('refuses a photo of a session that has not begun', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const { sessionId } = await permitFor(clinic, ready);
-  expect(await refusalOf(await picture(9, 9).png().toBuffer(), ready.patient, sessionId)).toEqual([409, 'session.not_ended']);
+  expect(await refusalOf(await picture(9, 9).png().toBuffer(), ready.patient, sessionId)).toEqual([
+    409,
+    'session.not_ended',
+  ]);
 });

@@ -25,7 +25,11 @@ beforeAll(async () => {
 afterAll(() => clinic.close());
 
 const lockoutsOf = (patient: Patient) =>
-  clinic.rows({ level: z.string(), code: z.string(), until: z.date().nullable() }, `select level, code, until from lockout where participant_id = $1`, [patient.participantId]);
+  clinic.rows(
+    { level: z.string(), code: z.string(), until: z.date().nullable() },
+    `select level, code, until from lockout where participant_id = $1`,
+    [patient.participantId],
+  );
 const itemsOf = (patient: Patient) =>
   clinic.rows(
     { id: z.string(), level: z.string(), why: z.string(), escalate_at: z.date().nullable() },
@@ -33,7 +37,11 @@ const itemsOf = (patient: Patient) =>
     [patient.participantId],
   );
 const mailsAbout = (itemId: string) =>
-  clinic.rows({ to_email: z.string(), urgent: z.boolean(), facts: z.record(z.string(), z.unknown()) }, `select to_email, urgent, facts from outbox where key like $1`, [`page:${itemId}:%`]);
+  clinic.rows(
+    { to_email: z.string(), urgent: z.boolean(), facts: z.record(z.string(), z.unknown()) },
+    `select to_email, urgent, facts from outbox where key like $1`,
+    [`page:${itemId}:%`],
+  );
 
 it('stores a clear pre-check as complete, good for 30 minutes, and locks nothing', async () => {
   const { patient } = await readyPatient(clinic, oona, siteId);
@@ -56,9 +64,14 @@ it('lists what is still open and does not count as a pre-check', async () => {
 it('holds until tomorrow after alcohol, and a second, clear pre-check does not clear that hold', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   expect(await answer(clinic, ready.patient, { drinksLast12h: 3 })).toMatchObject({ outcome: 'hold_tomorrow' });
-  expect(await lockoutsOf(ready.patient)).toMatchObject([{ level: 'hold', code: 'precheck_alcohol', until: expect.any(Date) }]);
+  expect(await lockoutsOf(ready.patient)).toMatchObject([
+    { level: 'hold', code: 'precheck_alcohol', until: expect.any(Date) },
+  ]);
   const second = await answer(clinic, ready.patient);
-  const refusal = await clinic.refused(ready.patient, issuePermit, { body: permitBody(ready, second.id), key: 'after-alcohol' });
+  const refusal = await clinic.refused(ready.patient, issuePermit, {
+    body: permitBody(ready, second.id),
+    key: 'after-alcohol',
+  });
   expect(refusal.reasons?.map(({ code }) => code)).toEqual(['lockout_hold']);
   expect(await itemsOf(ready.patient)).toEqual([]);
 });
@@ -75,13 +88,19 @@ it('opens a review lockout and a row for staff after sore skin, without paging a
 it('gives emergency advice, opens a safety lockout, pages the first contact and voids a live permit', async () => {
   const ready = await readyPatient(clinic, oona, siteId);
   const permit = await permitFor(clinic, ready);
-  const view = await clinic.call(ready.patient, answerPrecheck, { body: { answers: { mood: ['self_harm_thoughts'] } } });
+  const view = await clinic.call(ready.patient, answerPrecheck, {
+    body: { answers: { mood: ['self_harm_thoughts'] } },
+  });
   expect(view).toMatchObject({ complete: false, emergencyAdvice: true });
   expect(await lockoutsOf(ready.patient)).toMatchObject([{ level: 'safety', code: 'precheck_self_harm_thoughts' }]);
   const [item] = await itemsOf(ready.patient);
   expect((item?.escalate_at?.getTime() ?? 0) - Date.parse(view.answeredAt)).toBe(30 * 60_000);
   const [page] = await mailsAbout(item?.id ?? '');
-  expect(page).toMatchObject({ to_email: 'oncall@harrowmere.example', urgent: true, facts: { code: ready.patient.code, path: '/worklist' } });
+  expect(page).toMatchObject({
+    to_email: 'oncall@harrowmere.example',
+    urgent: true,
+    facts: { code: ready.patient.code, path: '/worklist' },
+  });
   expect(JSON.stringify(page?.facts)).not.toMatch(/harm|mood|lockout|stimul/i);
   const after = await clinic.call(ready.patient, readPermit, { params: { permitId: permit.id } });
   expect(after).toMatchObject({ state: 'void', voidedBy: 'lockout' });
@@ -120,13 +139,24 @@ describe('with a helper', () => {
   it('believes in a helper only by the helper’s own code', async () => {
     const said = await answer(clinic, patient, { helperPresent: true });
     const shown = await answer(clinic, patient, {}, '042042');
-    const rows = await clinic.rows({ id: z.string(), helper_present: z.boolean() }, `select id, helper_present from precheck where id = any($1)`, [[said.id, shown.id]]);
-    expect(new Map(rows.map((row) => [row.id, row.helper_present]))).toEqual(new Map([[said.id, false], [shown.id, true]]));
+    const rows = await clinic.rows(
+      { id: z.string(), helper_present: z.boolean() },
+      `select id, helper_present from precheck where id = any($1)`,
+      [[said.id, shown.id]],
+    );
+    expect(new Map(rows.map((row) => [row.id, row.helper_present]))).toEqual(
+      new Map([
+        [said.id, false],
+        [shown.id, true],
+      ]),
+    );
   });
 
   it('refuses a wrong code and stores nothing', async () => {
     const before = await clinic.rows({ n: z.number() }, `select count(*)::int n from precheck`);
-    const refusal = await clinic.refused(patient, answerPrecheck, { body: { answers: clearAnswers, helperCode: '000000' } });
+    const refusal = await clinic.refused(patient, answerPrecheck, {
+      body: { answers: clearAnswers, helperCode: '000000' },
+    });
     expect(refusal).toMatchObject({ status: 409, code: 'precheck.helper_code_wrong' });
     expect(await clinic.rows({ n: z.number() }, `select count(*)::int n from precheck`)).toEqual(before);
   });
@@ -134,5 +164,7 @@ describe('with a helper', () => {
 
 it('refuses somebody who has no course', async () => {
   const patient = await clinic.patient('No Course', siteId);
-  expect(await clinic.refused(patient, answerPrecheck, { body: { answers: clearAnswers } })).toMatchObject({ code: 'course.none' });
+  expect(await clinic.refused(patient, answerPrecheck, { body: { answers: clearAnswers } })).toMatchObject({
+    code: 'course.none',
+  });
 });

@@ -14,7 +14,12 @@ export interface Caregiver extends AccountActor {
 }
 
 /** Shares adherence, and is told of missed sessions unless said otherwise. */
-export async function acceptCaregiver(clinic: Clinic, patient: Patient, name: string, missedMail = true): Promise<Caregiver> {
+export async function acceptCaregiver(
+  clinic: Clinic,
+  patient: Patient,
+  name: string,
+  missedMail = true,
+): Promise<Caregiver> {
   const { db } = clinic.client;
   const actor = await clinic.staff(name, 'caregiver');
   const id = randomUUID();
@@ -24,7 +29,14 @@ export async function acceptCaregiver(clinic: Clinic, patient: Patient, name: st
     stopToken = tx.stopTokenFor(id);
   });
   const { participantId } = patient;
-  await insertCaregiver(db, { id, participantId, name, email: actor.email, createdAt, stopTokenHash: hashOfMailToken(stopToken) });
+  await insertCaregiver(db, {
+    id,
+    participantId,
+    name,
+    email: actor.email,
+    createdAt,
+    stopTokenHash: hashOfMailToken(stopToken),
+  });
   await insertShares(db, { id: randomUUID(), caregiverId: id, adherence: true, diary: false, missedMail, createdAt });
   await giveCaregiverAccount(db, id, actor.accountId, createdAt);
   return { ...actor, caregiverId: id, stopToken };

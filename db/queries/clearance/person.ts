@@ -42,7 +42,11 @@ export async function loadPerson(db: Db, participantId: string, now: string, pre
       course,
       pauseId: coursePause.id,
       prescription,
-      screening: { outcome: screening.outcome, validUntil: screening.validUntil, seizureHistory: screening.seizureHistory },
+      screening: {
+        outcome: screening.outcome,
+        validUntil: screening.validUntil,
+        seizureHistory: screening.seizureHistory,
+      },
       training: { signedOff: training.signedOff, validUntil: training.validUntil },
       deviceId: device.id,
       deviceState: deviceState.state,
@@ -60,7 +64,9 @@ export async function loadPerson(db: Db, participantId: string, now: string, pre
         join ${acknowledgement} k on k.prescription_id = p.id where p.course_id = ${course.id}), 0)`,
       sessionsDone: sql<number>`(select count(*)::int from ${session} d where d.course_id = ${course.id} and d.started_at is not null
         and (d.closed_at is null or (d.closed_why = 'recorded' and coalesce(d.completeness, 'partial') <> 'not_delivered')))`,
-      recallCallAt: sql<string | null>`(select max(r.created_at) from ${review} r join ${worklistItem} i on i.id = r.item_id
+      recallCallAt: sql<
+        string | null
+      >`(select max(r.created_at) from ${review} r join ${worklistItem} i on i.id = r.item_id
         where r.participant_id = ${participant.id} and i.why = ${recallMatter})`.mapWith(review.createdAt),
     })
     .from(participant)

@@ -23,7 +23,9 @@ function isMinor(person: ClearanceRecord['person'], now: string): boolean {
 
 function openSessions({ sessions, person }: ClearanceRecord, now: string) {
   const open = sessions.find(({ closedAt }) => closedAt === null);
-  const begunAndOver = sessions.filter(({ startedAt, endedAt, closedWhy }) => startedAt !== null && endedAt !== null && closedWhy !== 'unused');
+  const begunAndOver = sessions.filter(
+    ({ startedAt, endedAt, closedWhy }) => startedAt !== null && endedAt !== null && closedWhy !== 'unused',
+  );
   const { zone } = person.participant;
   const permit = person.openPermit;
   return {
@@ -31,11 +33,16 @@ function openSessions({ sessions, person }: ClearanceRecord, now: string) {
     openSessionId: open?.id ?? null,
     diaryDueSessionId: begunAndOver.find(({ hasDiary }) => !hasDiary)?.id ?? null,
     nextDayDueSessionId:
-      begunAndOver.find((each) => each.hasDiary && !each.hasNextDay && isNextDayDue(each.endedAt, now, zone))?.id ?? null,
+      begunAndOver.find((each) => each.hasDiary && !each.hasNextDay && isNextDayDue(each.endedAt, now, zone))?.id ??
+      null,
   };
 }
 
-export async function viewClearance(tx: Tx, gathered: ClearanceRecord, now: string): Promise<AnswerOf<typeof readClearance>> {
+export async function viewClearance(
+  tx: Tx,
+  gathered: ClearanceRecord,
+  now: string,
+): Promise<AnswerOf<typeof readClearance>> {
   const { person, planned, protocol } = gathered;
   const { participant, site, course, prescription } = person;
   const answer = withPlan(clearance(gatherFacts(gathered, now), now), planned, now);

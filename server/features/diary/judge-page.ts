@@ -56,7 +56,12 @@ export async function judgePage(db: Db, asked: Asked) {
   const isAfter = body.kind === 'after';
   const effects = isAfter ? body.answers.effects : [];
   const headache = facts.diary?.headache ?? 0;
-  const report = { number, endReason: session.endReason, completeness: session.delivered?.completeness ?? null, effects };
+  const report = {
+    number,
+    endReason: session.endReason,
+    completeness: session.delivered?.completeness ?? null,
+    effects,
+  };
   const looks = isAfter && found.mayStart ? looksOfDiary(report, session.id) : [];
   return {
     effects: found.effects,

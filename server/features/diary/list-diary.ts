@@ -25,7 +25,10 @@ export const listDiary = action(contract, async ({ actor, query }, tx) => {
   const ids = sessions.map(({ id }) => id);
   const pages = await listDiaries(tx.db, ids);
   const photos = await listPhotos(tx.db, ids);
-  const locked = await listLockoutsFrom(tx.db, pages.map(({ id }) => id));
+  const locked = await listLockoutsFrom(
+    tx.db,
+    pages.map(({ id }) => id),
+  );
   const numbers = new Map<string, number>();
   for (const courseId of new Set(sessions.map((session) => session.courseId))) {
     for (const [index, { id }] of (await listPlannedOfCourse(tx.db, courseId)).entries()) numbers.set(id, index + 1);

@@ -21,13 +21,21 @@ export const writeDiary = action(contract, async ({ actor, params, body }, tx) =
   await lockCourse(tx.db, courseId);
   const now = await tx.now();
   const session = (await findSession(tx.db, sessionId)) ?? found;
-  if (session.startedAt === null || session.endedAt === null) return refuse('session.not_ended', { participantId, siteId });
+  if (session.startedAt === null || session.endedAt === null)
+    return refuse('session.not_ended', { participantId, siteId });
   const pages = await listDiaries(tx.db, [sessionId]);
   if (pages.some(({ kind }) => kind === body.kind)) return refuse('diary.already_written', { participantId, siteId });
 
   const { number } = await findNumber(tx.db, courseId, session.plannedSessionId);
   const photos = await listPhotos(tx.db, [sessionId]);
-  const judged = await judgePage(tx.db, { session, startedAt: session.startedAt, number, body, pages, photos: photos.length });
+  const judged = await judgePage(tx.db, {
+    session,
+    startedAt: session.startedAt,
+    number,
+    body,
+    pages,
+    photos: photos.length,
+  });
   const id = crypto.randomUUID();
   const consequences = consequencesOf(
     judged.findings,
@@ -47,7 +55,12 @@ export const writeDiary = action(contract, async ({ actor, params, body }, tx) =
   for (const mail of about ? firstPages(consequences, protocol?.settings.contacts ?? [], about) : []) tx.tell(mail);
 
   const lockouts = consequences.lockouts.map(({ level, code }) => ({ level, code }));
-  tx.record({ participantId, siteId, subject: { kind: 'diary', id }, after: { sessionId, kind, headache, worstGrade, lockouts } });
+  tx.record({
+    participantId,
+    siteId,
+    subject: { kind: 'diary', id },
+    after: { sessionId, kind, headache, worstGrade, lockouts },
+  });
   // Told again by what it said, whether the lockout is new or stood already.
   const locked = judged.effects.map(({ code, level }) => ({ sourceId: id, code, level }));
   return pageView({ id, sessionId, kind, answers, emergencyAdvice, writtenAt: now }, photos, locked, 'whole');

@@ -13,6 +13,10 @@ export const endHolds: Job = {
     const now = await tx.now();
     if (!hold || hold.until === null || hold.until > now) return;
     if (!(await closeLockout(tx.db, id, now, 'time'))) return;
-    tx.record({ participantId: hold.participantId, subject: { kind: 'lockout', id }, after: { code: hold.code, until: hold.until, closed: 'time' } });
+    tx.record({
+      participantId: hold.participantId,
+      subject: { kind: 'lockout', id },
+      after: { code: hold.code, until: hold.until, closed: 'time' },
+    });
   },
 };

@@ -22,6 +22,11 @@ export const escalatePages: Job = {
     const page = about && pageAt(protocol?.settings.contacts ?? [], { itemId: id, ...about }, step);
     await setEscalation(tx.db, id, step, escalationAfter(now));
     if (page) tx.tell(page);
-    tx.record({ participantId, siteId, subject: { kind: 'worklist_item', id }, after: { step, told: page?.facts.name ?? null } });
+    tx.record({
+      participantId,
+      siteId,
+      subject: { kind: 'worklist_item', id },
+      after: { step, told: page?.facts.name ?? null },
+    });
   },
 };

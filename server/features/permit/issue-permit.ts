@@ -63,7 +63,15 @@ export const issuePermit = action(contract, async ({ actor, body, key }, tx) => 
   const counter = await raiseDeviceCounter(tx.db, body.deviceId);
   if (counter === null) return notFound();
   const { expiresAt, expiresBy } = expiry;
-  const permit = { id: crypto.randomUUID(), participantId, courseId: course.id, deviceId: body.deviceId, counter, issuedAt: now, expiresAt };
+  const permit = {
+    id: crypto.randomUUID(),
+    participantId,
+    courseId: course.id,
+    deviceId: body.deviceId,
+    counter,
+    issuedAt: now,
+    expiresAt,
+  };
   const sessionId = crypto.randomUUID();
   const token = await signPermit(tx, claimsOf(permit, sessionId, prescription));
   const { intensityUa, chargeUc, onMs } = prescription;
@@ -86,7 +94,16 @@ export const issuePermit = action(contract, async ({ actor, body, key }, tx) => 
     participantId,
     siteId,
     subject: { kind: 'permit', id: permit.id },
-    after: { sessionId, counter, expiresAt, expiresBy, prescriptionVersion: prescription.version, intensityUa, chargeUc, onMs },
+    after: {
+      sessionId,
+      counter,
+      expiresAt,
+      expiresBy,
+      prescriptionVersion: prescription.version,
+      intensityUa,
+      chargeUc,
+      onMs,
+    },
   });
   const made = await findPermit(tx.db, permit.id);
   if (!made) throw new Error('The permit just made is not there.');

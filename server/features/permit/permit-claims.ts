@@ -19,7 +19,11 @@ function epochSecondsOf(instant: string): number {
   return Math.floor(secondsOf(parseInstant(instant) ?? Number.NaN));
 }
 
-export function claimsOf(permit: Given, sessionId: string, prescription: StoredDose & { version: number | null }): PermitClaims {
+export function claimsOf(
+  permit: Given,
+  sessionId: string,
+  prescription: StoredDose & { version: number | null },
+): PermitClaims {
   return {
     iss: 'rampwell',
     aud: permit.deviceId,

@@ -9,6 +9,8 @@ export const readPermitKeys = action(contract, async (_input, tx) => {
   await ensureSigningKey(tx);
   const keys = await listSigningKeys(tx.db);
   return {
-    keys: keys.map(({ kid, publicX }) => ({ kty: 'OKP', crv: 'Ed25519', x: publicX, kid, alg: 'EdDSA', use: 'sig' }) as const),
+    keys: keys.map(
+      ({ kid, publicX }) => ({ kty: 'OKP', crv: 'Ed25519', x: publicX, kid, alg: 'EdDSA', use: 'sig' }) as const,
+    ),
   };
 });

@@ -29,6 +29,10 @@ export const addPhoto = action(contract, async ({ actor, params, file }, tx) => 
     createdAt: now,
     accountId: actor.accountId,
   });
-  tx.record({ ...whose, subject: { kind: 'photo', id }, after: { sessionId: session.id, width, height, bytes: jpeg.length } });
+  tx.record({
+    ...whose,
+    subject: { kind: 'photo', id },
+    after: { sessionId: session.id, width, height, bytes: jpeg.length },
+  });
   return { id, takenAt: now, width, height };
 });

@@ -1,12 +1,13 @@
 // From an uploaded file to a clean JPEG. Its name and claimed type are never trusted; metadata (place, time, camera) does not survive.
 
 import sharp from 'sharp';
-import type { UploadedFile } from '@/server/action';
+import type { refuse, UploadedFile } from '@/server/action';
 import { photoLimits } from '@/shared/rules/house-limits';
 
+type Status = NonNullable<Parameters<typeof refuse>[1]>['status'];
 type Picture =
   | { isReadable: true; jpeg: Uint8Array; width: number; height: number }
-  | { isReadable: false; code: string; status: 413 | 415 };
+  | { isReadable: false; code: string; status: Status };
 
 const notAllowed: Picture = { isReadable: false, code: 'photo.type_not_allowed', status: 415 };
 const unreadable: Picture = { isReadable: false, code: 'photo.unreadable', status: 415 };
@@ -15,7 +16,11 @@ const tooLarge: Picture = { isReadable: false, code: 'photo.too_large', status: 
 /** JPEG, PNG or WebP by its first bytes: nothing else reaches the library, which would read a dozen kinds more. */
 function hasAllowedStart(bytes: Uint8Array): boolean {
   const start = Buffer.from(bytes.subarray(0, photoLimits.signatureBytes)).toString('latin1');
-  return start.startsWith('\u00ff\u00d8\u00ff') || start.startsWith('\u0089PNG\r\n') || (start.startsWith('RIFF') && start.endsWith('WEBP'));
+  return (
+    start.startsWith('\u00ff\u00d8\u00ff') ||
+    start.startsWith('\u0089PNG\r\n') ||
+    (start.startsWith('RIFF') && start.endsWith('WEBP'))
+  );
 }
 
 export async function readPicture(file: UploadedFile | null): Promise<Picture> {

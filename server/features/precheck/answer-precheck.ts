@@ -63,7 +63,10 @@ export const answerPrecheck = action(contract, async ({ actor, body }, tx) => {
   };
   await insertPrecheck(tx.db, row);
   await storeConsequences(tx.db, consequences, participantId, now);
-  const pages = firstPages(consequences, protocol?.settings.contacts ?? [], { siteName: person.site.name, code: person.participant.code });
+  const pages = firstPages(consequences, protocol?.settings.contacts ?? [], {
+    siteName: person.site.name,
+    code: person.participant.code,
+  });
   for (const page of pages) tx.tell(page);
   const { outcome, complete } = judged;
   const lockouts = consequences.lockouts.map(({ level, code }) => ({ level, code }));

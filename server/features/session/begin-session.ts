@@ -10,7 +10,12 @@ import { permitStateAt } from '@/shared/rules/permit-state';
 import { endedAtOf, startedAtOf } from '@/shared/rules/session-record';
 import { latestSecondsOf, tellsOfCurrent } from '@/shared/rules/session-summary';
 
-export async function beginSession(tx: Tx, session: SessionRecord, accepted: readonly SessionEvent[], now: string): Promise<void> {
+export async function beginSession(
+  tx: Tx,
+  session: SessionRecord,
+  accepted: readonly SessionEvent[],
+  now: string,
+): Promise<void> {
   const { id, permitId, permit, participantId, siteId } = session;
   const latest = accepted.map(latestSecondsOf).reduce((most, seconds) => Math.max(most, seconds), 0);
   const begins = session.startedAt === null && accepted.some(tellsOfCurrent);

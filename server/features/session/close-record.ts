@@ -29,7 +29,12 @@ export async function closeRecord(tx: Tx, sessionId: string, now: string) {
       await closePlanned(tx.db, session.plannedSessionId, now, 'done');
       await closeCourseIfDone(tx.db, session.courseId, now);
     }
-    await storeRecordFindings(tx, session, { endReason: amounts.endReason, completeness: row.completeness, summary }, now);
+    await storeRecordFindings(
+      tx,
+      session,
+      { endReason: amounts.endReason, completeness: row.completeness, summary },
+      now,
+    );
   }
   const { closedWhy, completeness, deliveredUc, upperUc, onMs } = row;
   return { closedWhy, completeness, deliveredUc, upperUc, onMs };
@@ -41,7 +46,12 @@ interface Report {
   summary: SessionSummary;
 }
 
-async function storeRecordFindings(tx: Tx, session: SessionRecord, { endReason, completeness, summary }: Report, now: string): Promise<void> {
+async function storeRecordFindings(
+  tx: Tx,
+  session: SessionRecord,
+  { endReason, completeness, summary }: Report,
+  now: string,
+): Promise<void> {
   const { id, participantId, siteId } = session;
   const { number } = await findNumber(tx.db, session.courseId, session.plannedSessionId);
   const effects = summary.sensations.map(({ sensation, strength }) => ({ kind: sensation, strength }));
@@ -49,7 +59,8 @@ async function storeRecordFindings(tx: Tx, session: SessionRecord, { endReason, 
   const own = await listLockoutsFrom(tx.db, [id]);
   const locked = lockoutsAfterDiary({ endReasons: await listEndReasons(tx.db, participantId, lostContactLooksBack) });
   // What has locked already is on the list.
-  const looks = own.length > 0 ? [] : looksOfRecord({ number, endReason, completeness, effects, gapSeconds, conflicts }, id);
+  const looks =
+    own.length > 0 ? [] : looksOfRecord({ number, endReason, completeness, effects, gapSeconds, conflicts }, id);
   const consequences = consequencesOf(
     [...findingsOfEffects(locked, { number }), ...looks],
     { participantId, siteId, source: 'session', sourceId: id, sessionId: id, at: now },

@@ -5,7 +5,12 @@ import { openItem } from '@/db/queries/worklist';
 import type { Tx } from '@/server/action';
 import type { EventVerdict } from '@/shared/rules/session-record';
 
-export async function flagRecord(tx: Tx, session: SessionRecord, verdicts: readonly EventVerdict[], now: string): Promise<void> {
+export async function flagRecord(
+  tx: Tx,
+  session: SessionRecord,
+  verdicts: readonly EventVerdict[],
+  now: string,
+): Promise<void> {
   const conflicts = verdicts.filter(
     (each) => each.verdict === 'refused' && (each.code === 'other_content' || each.code === 'sequence_taken'),
   );

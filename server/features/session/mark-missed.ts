@@ -15,7 +15,12 @@ import { jobBatch } from '@/shared/rules/house-limits';
 import { missedOrExcused, windowClosed } from '@/shared/rules/schedule';
 
 /** Flags that have come up: each one open row, however often it comes up again. */
-async function flag(tx: Tx, facts: AdherenceFacts, whose: { participantId: string; siteId: string }, now: string): Promise<readonly string[]> {
+async function flag(
+  tx: Tx,
+  facts: AdherenceFacts,
+  whose: { participantId: string; siteId: string },
+  now: string,
+): Promise<readonly string[]> {
   const { flags, missedRunning, counts, planned } = adherence(facts, now);
   for (const code of flags) {
     await openItem(tx.db, {

@@ -20,6 +20,8 @@ export async function planMakeUp(db: Db, missed: PlannedRecord, now: string): Pr
   const window = windowAfter({ ...schedule, zone: person.zone, expiresAt }, lastFrom);
   if (window === null) return null;
   const id = crypto.randomUUID();
-  await insertPlanned(db, [{ id, courseId, participantId, prescriptionId, ...window, replacesId: missed.id, createdAt: now }]);
+  await insertPlanned(db, [
+    { id, courseId, participantId, prescriptionId, ...window, replacesId: missed.id, createdAt: now },
+  ]);
   return id;
 }

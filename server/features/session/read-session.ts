@@ -25,11 +25,21 @@ export const readSession = action(contract, async ({ actor, params }, tx) => {
   tx.record({ participantId, siteId, kind: 'read', subject: { kind: 'session', id } });
 
   const pages = await listDiaries(tx.db, [id]);
-  const locked = await listLockoutsFrom(tx.db, pages.map((page) => page.id));
+  const locked = await listLockoutsFrom(
+    tx.db,
+    pages.map((page) => page.id),
+  );
   const reader = actor.role === 'monitor' ? 'pseudonymous' : 'whole';
   // Until the record is whole, what has come in so far.
   const events = session.summary === null ? eventsOf(await listEventBodies(tx.db, id)) : [];
-  const { curve, contact: electrodes, pauses, sensations, gaps, conflicts } = session.summary ?? summaryOf(dose, events, amountsOf(dose, events));
+  const {
+    curve,
+    contact: electrodes,
+    pauses,
+    sensations,
+    gaps,
+    conflicts,
+  } = session.summary ?? summaryOf(dose, events, amountsOf(dose, events));
   const ended = events.find((event) => event.kind === 'ended');
   const permit = permitStateAt(session.permit, now);
   const { number, of } = await findNumber(tx.db, session.courseId, session.plannedSessionId);

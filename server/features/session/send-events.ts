@@ -4,7 +4,13 @@
 import { findOpenPause, lockCourse } from '@/db/queries/course-state';
 import { listOpenLockouts } from '@/db/queries/lockout';
 import { findPrescriptionInForce } from '@/db/queries/prescription';
-import { findSessionOfPermit, insertEvents, listEventBodies, listKeptEvents, type SessionRecord } from '@/db/queries/session';
+import {
+  findSessionOfPermit,
+  insertEvents,
+  listEventBodies,
+  listKeptEvents,
+  type SessionRecord,
+} from '@/db/queries/session';
 import { action, invalid, notFound, type Tx } from '@/server/action';
 import { beginSession } from '@/server/features/session/begin-session';
 import { closeRecord } from '@/server/features/session/close-record';
@@ -14,7 +20,13 @@ import { storeRunFindings } from '@/server/features/session/store-run-findings';
 import { sendEvents as contract, type SessionEvent } from '@/shared/contracts/permit';
 import { permitState } from '@/shared/rules/permit';
 import { permitStateAt } from '@/shared/rules/permit-state';
-import { judgeEvents, missingSequences, secondsSince, sessionWordOf, type EventVerdict } from '@/shared/rules/session-record';
+import {
+  judgeEvents,
+  missingSequences,
+  secondsSince,
+  sessionWordOf,
+  type EventVerdict,
+} from '@/shared/rules/session-record';
 import { plannedSecondsOf } from '@/shared/rules/session-summary';
 
 function lastSequenceOf(events: readonly SessionEvent[]): number | null {
@@ -62,7 +74,9 @@ export const sendEvents = action(contract, async ({ actor, params, body }, tx) =
 
   const verdicts = judgeEvents(body.events.map(incomingOf), kept, secondsSince(session.permit.issuedAt, now), end);
   const refusedAs = (id: string) => verdicts.find((each) => each.id === id && each.verdict === 'refused');
-  const isHopeless = verdicts.every((each) => each.verdict === 'refused' && (each.code === 'from_the_future' || each.code === 'after_the_end'));
+  const isHopeless = verdicts.every(
+    (each) => each.verdict === 'refused' && (each.code === 'from_the_future' || each.code === 'after_the_end'),
+  );
   if (isHopeless) {
     return invalid(
       body.events.flatMap((event, index) => {
@@ -74,7 +88,11 @@ export const sendEvents = action(contract, async ({ actor, params, body }, tx) =
   }
 
   const accepted = body.events.filter((_event, index) => verdicts[index]?.verdict === 'store');
-  await insertEvents(tx.db, session.id, accepted.map((event) => rowOf(event, now)));
+  await insertEvents(
+    tx.db,
+    session.id,
+    accepted.map((event) => rowOf(event, now)),
+  );
   await storeRunFindings(tx, session, accepted, now);
   await beginSession(tx, session, accepted, now);
   await flagRecord(tx, session, verdicts, now);

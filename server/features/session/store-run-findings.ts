@@ -13,7 +13,12 @@ import { lockoutsAfterDiary } from '@/shared/rules/lockout';
 import { findingsOfEffects } from '@/shared/rules/lockout-findings';
 import { runFactsOf, samplesBeforeMs } from '@/shared/rules/session-run-facts';
 
-export async function storeRunFindings(tx: Tx, session: SessionRecord, accepted: readonly SessionEvent[], now: string): Promise<void> {
+export async function storeRunFindings(
+  tx: Tx,
+  session: SessionRecord,
+  accepted: readonly SessionEvent[],
+  now: string,
+): Promise<void> {
   const { id, participantId, siteId, dose, permit } = session;
   const fromMs = samplesBeforeMs(accepted);
   // A run above the permit may lie across two batches.

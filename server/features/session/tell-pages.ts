@@ -5,7 +5,12 @@ import { findPageFacts } from '@/db/queries/site-contact';
 import type { Tx } from '@/server/action';
 import { firstPages, type Consequences } from '@/shared/rules/consequences';
 
-export async function tellPages(tx: Tx, consequences: Consequences, participantId: string, siteId: string): Promise<void> {
+export async function tellPages(
+  tx: Tx,
+  consequences: Consequences,
+  participantId: string,
+  siteId: string,
+): Promise<void> {
   if (consequences.paged.length === 0) return;
   const facts = await findPageFacts(tx.db, participantId);
   const protocol = await readProtocolInForce(tx.db, siteId);
