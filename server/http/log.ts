@@ -30,6 +30,8 @@ function codeOf(error: Error): string | undefined {
 export function logRequests(log: Logger) {
   return pinoHttp({
     logger: log,
+    // Wrapped, our serializer would get a copy of the error that has lost its cause.
+    wrapSerializers: false,
     genReqId: (_request: IncomingMessage, response: ServerResponse) => {
       const id = randomUUID();
       response.setHeader('X-Request-Id', id);

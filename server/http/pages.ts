@@ -37,7 +37,7 @@ export function pages(folder: string): Router {
   );
   // A page of the app has no file of its own. A missing file must stay missing: a browser that gets HTML for a script says so loudly.
   router.get('/{*rest}', (request, response, next) => {
-    if (path.extname(request.path) !== '' || !request.accepts('html')) return next();
+    if (/\.|%/.test(request.path) || !request.accepts('html')) return next();
     const shell = path.join(folder, 'index.html');
     if (!existsSync(shell)) return next();
     request.url = '/index.html';
