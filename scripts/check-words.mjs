@@ -6,7 +6,13 @@ import ts from 'typescript';
 import { root } from './ground/paths.mjs';
 
 /** Keys built at run time in a way this script cannot read, as `namespace:start.of.key`, each with its reason. */
-const asked = {};
+const asked = {
+  'clearance:reason.': 'the server asks by the code of a reason (server/reasons.ts)',
+  'errors:': 'the server asks by the code of a problem, a field or a layer (server/words.ts)',
+  'mail:': 'the server asks by the kind of a mail (server/mail/render-mail.ts)',
+  'participants:timeline.kind.': 'asked by kind and word of an entry (timeline-words.ts)',
+  'common:errors.': 'asked by the code of a form issue (words-of-issue.ts)',
+};
 
 /** Props that people read or hear. */
 const readProps = new Set([
