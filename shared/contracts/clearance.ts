@@ -49,6 +49,8 @@ export const ClearanceView = z.strictObject({
   /** A closed session of yesterday or before whose next-day questions are due. */
   nextDayDueSessionId: Uuid.nullable(),
   prescriptionToAcknowledgeId: Uuid.nullable(),
+  /** The last version that the participant has confirmed; 0 = none yet. */
+  acknowledgedVersion: z.number().int(),
   site: SiteContact,
 });
 export type ClearanceView = z.infer<typeof ClearanceView>;

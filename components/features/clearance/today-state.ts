@@ -33,7 +33,7 @@ export function todayState(answer: ClearanceView, facts: { personState: string; 
   if (answer.diaryDueSessionId) return 'diary';
   if (has('course_complete') || facts.personState === 'finished') return 'finished';
   if (answer.reasons.some((reason) => holdCodes.includes(reason.code))) return 'hold';
-  if (answer.prescriptionToAcknowledgeId) return has('prescription_unacknowledged') && answer.dose === null ? 'acknowledgeFirst' : 'acknowledge';
+  if (answer.prescriptionToAcknowledgeId) return answer.acknowledgedVersion === 0 ? 'acknowledgeFirst' : 'acknowledge';
   if (has('session_open')) return 'record';
   if (answer.nextDayDueSessionId) return 'nextDay';
   if (answer.allowed) return 'start';

@@ -1,10 +1,11 @@
 /**
  * A draft, or a version that waits for its second signature: read once more, then signed with the password again.
  */
+import { useRouter } from 'expo-router';
 import { useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { View } from 'react-native';
-import { useCall } from '@/components/runtime/api';
+import { ApiProblem, useCall } from '@/components/runtime/api';
 import { useFormat } from '@/components/runtime/format';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
@@ -30,6 +31,7 @@ export interface SignPanelProps {
 export function SignPanel({ draft, before, isClinician, mayEdit, accountName, onEdit }: SignPanelProps) {
   const { t } = useTranslation('prescription');
   const format = useFormat();
+  const router = useRouter();
   const toast = useToast();
   const sign = useCall(signPrescription);
   const [password, setPassword] = useState('');
@@ -37,14 +39,19 @@ export function SignPanel({ draft, before, isClinician, mayEdit, accountName, on
   const ownSignature = draft.signatures.some((signature) => signature.name === accountName);
   const problem = sign.error?.problem;
   const passwordProblem = problem?.fields?.find((field) => field.path.endsWith('password'))?.message;
-  const go = () =>
-    sign.mutate(
-      { params: { prescriptionId: draft.id }, body: { contentHash: draft.contentHash, meaning: isSecond ? 'second_signature' : 'prescribed', password }, key: crypto.randomUUID() },
-      {
-        onSuccess: (signed) => toast.show({ text: t(signed.status === 'signed' ? 'signed' : 'waits'), tone: 'steady' }),
-        onSettled: () => setPassword(''),
-      },
-    );
+  // Awaited, not given as a callback: once it is signed the page reads anew and this panel may be gone before a callback is called.
+  const go = async () => {
+    const body = { contentHash: draft.contentHash, meaning: isSecond ? 'second_signature' : 'prescribed', password } as const;
+    try {
+      const signed = await sign.mutateAsync({ params: { prescriptionId: draft.id }, body, key: crypto.randomUUID() });
+      toast.show({ text: t(signed.status === 'signed' ? 'signed' : 'waits'), tone: 'steady' });
+      router.replace({ pathname: '/participants/[participantId]', params: { participantId: draft.participantId } });
+    } catch (error) {
+      if (!(error instanceof ApiProblem)) throw error;
+      // The call keeps the problem and it is shown above the password.
+      setPassword('');
+    }
+  };
   return (
     <View style={{ gap: space[5] }}>
       <Notice tone={draft.verdict === 'accept' ? 'info' : 'caution'} title={t(isSecond ? 'waitsTitle' : 'draftTitle')}>
@@ -64,13 +71,13 @@ export function SignPanel({ draft, before, isClinician, mayEdit, accountName, on
         <Card>
           <View style={{ gap: space[4], alignItems: 'flex-start' }}>
             {problem && !passwordProblem ? <Notice tone="stop" title={sign.error?.offline ? t('common:notSent') : problem.detail} announce="assertive">{problem.fields?.map((field) => field.message).join(' ')}</Notice> : null}
-            <PasswordField label={t('password')} value={password} onChange={setPassword} onSubmit={go} {...(passwordProblem ? { error: passwordProblem } : {})} />
+            <PasswordField label={t('password')} value={password} onChange={setPassword} onSubmit={() => void go()} {...(passwordProblem ? { error: passwordProblem } : {})} />
             <Text size="small" tone="muted">
               {t(isSecond ? 'meaningSecond' : 'meaning')}
             </Text>
             <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: space[3] }}>
               {mayEdit && !isSecond ? <Button kind="secondary" label={t('back')} onPress={onEdit} /> : null}
-              <Button label={isSecond ? t('signSecond') : t('sign', { version: (before?.version ?? 0) + 1 })} size="large" busy={sign.isPending} disabled={password === ''} onPress={go} />
+              <Button label={isSecond ? t('signSecond') : t('sign', { version: (before?.version ?? 0) + 1 })} size="large" busy={sign.isPending} disabled={password === ''} onPress={() => void go()} />
             </View>
           </View>
         </Card>

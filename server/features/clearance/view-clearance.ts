@@ -81,6 +81,7 @@ export async function viewClearance(
     precheck: person.precheck === null ? null : precheckView(person.precheck),
     ...openSessions(gathered, now),
     prescriptionToAcknowledgeId: isUnread ? prescription.id : null,
+    acknowledgedVersion: person.acknowledgedVersion,
     site: {
       id: site.id,
       name: site.name,

@@ -82,6 +82,7 @@ export function clearanceOf(change: Partial<ClearanceView> = {}): ClearanceView 
     diaryDueSessionId: null,
     nextDayDueSessionId: null,
     prescriptionToAcknowledgeId: null,
+    acknowledgedVersion: 1,
     site,
     ...change,
   };
