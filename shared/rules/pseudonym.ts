@@ -5,7 +5,7 @@ type Json = string | number | boolean | null | readonly Json[] | { readonly [key
 /** Names of facts that identify, or that a person wrote in own words (safety rules §10: the monitor sees pseudonyms). */
 const hidden = new Set([
   ...['name', 'email', 'phone', 'bornOn', 'emergencyContact', 'emergencyName', 'emergencyPhone', 'helperName'],
-  ...['text', 'freeText', 'remark', 'finding', 'toEmail', 'address'],
+  ...['text', 'freeText', 'remark', 'reason', 'finding', 'toEmail', 'address'],
 ]);
 
 /** The same facts without those; at every depth. */

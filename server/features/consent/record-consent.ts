@@ -32,8 +32,7 @@ export const recordConsent = action(contract, async ({ actor, params, body }, tx
   tx.record({
     ...whose,
     subject: { kind: 'consent', id },
-    after: { kind, documentVersion, signedOn, ...ticked },
-    why: remark,
+    after: { kind, documentVersion, signedOn, ...ticked, remark },
   });
   return { id };
 });

@@ -42,8 +42,7 @@ export const recordTraining = action(contract, async ({ actor, params, body }, t
   tx.record({
     ...whose,
     subject: { kind: 'training', id },
-    after: { signedOff, validUntil, open: judged.open, helperName: helperName ?? null },
-    why: remark,
+    after: { signedOff, validUntil, open: judged.open, helperName: helperName ?? null, remark },
   });
   return { id, signedOff, open: [...judged.open], validUntil };
 });

@@ -30,8 +30,7 @@ export const recordWatchedSession = action(contract, async ({ actor, params, bod
   tx.record({
     ...whose,
     subject: { kind: 'watched_session', id },
-    after: { where, when, until, tolerated: tolerated ?? null },
-    why: remark,
+    after: { where, when, until, tolerated: tolerated ?? null, remark },
   });
   const watched = await countWatchedSessions(tx.db, participant.id);
   return { id, watched, required: protocol.settings.watchedSessionsRequired };
