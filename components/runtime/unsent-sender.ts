@@ -110,7 +110,6 @@ export class UnsentSender {
     await this.count(store, this.snapshot.isOffline);
     if (this.snapshot.count === 0) return;
     try {
-      await this.beforeSending?.();
       await this.sendAllEvents(store);
       await this.sendDiaries(store);
       await this.sendPhotos(store);
@@ -161,6 +160,8 @@ export class UnsentSender {
 
   private async sendBatch(store: PhoneStore, permitId: string, rows: readonly EventRow[]): Promise<void> {
     try {
+      // Only now: what these rows tell of has been read, so a demo's clock is level with all of it.
+      await this.beforeSending?.();
       const answer = await callDoor(sendEvents, {
         params: { permitId },
         body: { events: rows.map((row) => row.event) },
@@ -183,7 +184,10 @@ export class UnsentSender {
   /** A whole batch refused: what is named is put aside, or kept if it is only early; the others are tried again without it. */
   private async settleRefused(store: PhoneStore, rows: readonly EventRow[], problem: Problem): Promise<void> {
     const named = new Map(
-      (problem.fields ?? []).map((field) => [Number(/^(?:body\.)?events\.(\d+)/.exec(field.path)?.[1] ?? -1), field.code]),
+      (problem.fields ?? []).map((field) => [
+        Number(/^(?:body\.)?events\.(\d+)/.exec(field.path)?.[1] ?? -1),
+        field.code,
+      ]),
     );
     const isNamed = rows.some((_row, place) => named.has(place));
     await this.settle(store, rows, (row) => {

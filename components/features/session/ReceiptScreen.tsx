@@ -150,7 +150,11 @@ function Receipt({ session, unsent }: { session: SessionView; unsent: number }) 
           <Definition rows={rowsOf(session, format, t)} />
         </Card>
       ) : null}
-      {course.data ? <Strip marks={course.data.marks} size="page" zone={session.zone} /> : null}
+      {course.data ? (
+        <Card>
+          <Strip marks={course.data.marks} size="card" zone={session.zone} />
+        </Card>
+      ) : null}
     </ParticipantShell>
   );
 }

@@ -87,23 +87,26 @@ export function RunPage({ view, run, device, session }: RunPageProps) {
       {picture.isOver ? null : (
         <>
           <RunContacts contacts={contacts} onAttended={(position) => session.stimulator()?.attend(position)} />
-          {isFeelOpen ? (
-            <FeelPanel
-              onFeel={(kind, strength) => {
-                session.feel(kind, strength);
-                setNoted(t('feel.noted', { what: t(`diary:effect.${kind}`), strength }));
-                setFeelOpen(false);
-              }}
-              onRaise={(flag) => {
-                session.raise(flag);
-                setFeelOpen(false);
-              }}
-              onClose={() => setFeelOpen(false)}
-            />
-          ) : (
-            <Button kind="secondary" grow label={t('run.feel')} expanded={false} onPress={() => setFeelOpen(true)} />
-          )}
-          <Live>{noted ? <Text tone="muted">{noted}</Text> : null}</Live>
+          {/* On the page before its text is, but without a gap of its own. */}
+          <View style={noted ? { gap: space[2] } : {}}>
+            {isFeelOpen ? (
+              <FeelPanel
+                onFeel={(kind, strength) => {
+                  session.feel(kind, strength);
+                  setNoted(t('feel.noted', { what: t(`diary:effect.${kind}`), strength }));
+                  setFeelOpen(false);
+                }}
+                onRaise={(flag) => {
+                  session.raise(flag);
+                  setFeelOpen(false);
+                }}
+                onClose={() => setFeelOpen(false)}
+              />
+            ) : (
+              <Button kind="secondary" grow label={t('run.feel')} expanded={false} onPress={() => setFeelOpen(true)} />
+            )}
+            <Live>{noted ? <Text tone="muted">{noted}</Text> : null}</Live>
+          </View>
           {picture.mayGoOn ? (
             <GoOn session={session} contactIsGood={contacts.every(({ grade }) => grade === 'good')} />
           ) : null}

@@ -104,7 +104,7 @@ it('has Stop after contact was lost, and says what to do to which pad', async ()
   bench.run.stimulator()?.lift('F3');
   await bench.pass(20);
   const { user } = await page();
-  expect(title()).toBe('Paused, a pad has lost contact');
+  expect(title()).toBe('A pad has come loose');
   expect(stop()).toBeTruthy();
   await user.click(screen.getByRole('button', { name: /I have wetted and pressed it: .*F3/ }));
   await pass(2);

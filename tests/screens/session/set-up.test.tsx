@@ -95,7 +95,7 @@ it('names the places left and right, and goes on only when every step is ticked'
   await user.click(await button('Find the stimulator'));
   await user.click(await button('Next: the pads'));
   expect(
-    screen.getByRole('img', { name: /red lead: Left front of your head, F3.*black lead: Above your right eye, Fp2/ }),
+    screen.getByRole('img', { name: /red lead: Left forehead, F3.*black lead: Above right eye, Fp2/ }),
   ).toBeTruthy();
   expect(isOff(await button('Next: contact'))).toBe(true);
   expect(await axe(container)).toHaveNoViolations();

@@ -8,7 +8,7 @@ import { usePlaceName } from '@/components/features/session/pictures/place-words
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Text } from '@/components/ui/Text';
-import { space } from '@/components/ui/theme';
+import { space, useTheme } from '@/components/ui/theme';
 
 export interface ContactCardProps {
   position: string;
@@ -21,11 +21,12 @@ export interface ContactCardProps {
 export function ContactCard({ position, polarity, grade, onAttended }: ContactCardProps) {
   const { t } = useTranslation('device');
   const placeName = usePlaceName();
+  const { rem } = useTheme();
   const name = placeName(position);
   return (
     <Card padding="close" edge={grade === 'good' ? undefined : grade === 'weak' ? 'caution' : 'stop'}>
       <View style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', gap: space[3] }}>
-        <View style={{ flexGrow: 1, flexShrink: 1 }}>
+        <View style={{ flexGrow: 1, flexShrink: 1, flexBasis: rem(9), minWidth: 0 }}>
           <Text weight="bold">{name}</Text>
           <Text size="small" tone="muted">
             {t(`lead.${polarity}`)}
