@@ -2,7 +2,7 @@
  * Stands before a group of screens: shows them to the roles they serve, sends everybody else to where they belong. The
  * server checks each door again; this only spares people a page of refusals.
  */
-import { Redirect, Slot, usePathname, useSegments, type Href } from 'expo-router';
+import { Redirect, Slot, usePathname, useSegments } from 'expo-router';
 import { useMemo } from 'react';
 import { useTranslation } from 'react-i18next';
 import { PublicShell } from '@/components/layout/PublicShell';
@@ -37,7 +37,7 @@ export function RoleGate() {
   useSessionRun();
   const account = useMemo(() => (me ? shellAccountOf(me, () => void signOut()) : {}), [me, signOut]);
 
-  if (here.state === 'signed_out') return <Redirect href={`/sign-in?next=${encodeURIComponent(pathname)}` as Href} />;
+  if (here.state === 'signed_out') return <Redirect href={`/sign-in?next=${encodeURIComponent(pathname)}`} />;
   if (here.state === 'second_factor') return <Redirect href="/second-factor" />;
   if (!me) {
     return (

@@ -2,6 +2,7 @@
 // It never decides; a refusal comes back as ApiProblem with the server's reasons.
 
 import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import type { z } from 'zod';
 import type { AnswerOf, BodyIn, ContractShape, ParamsIn, QueryIn } from '@/shared/contracts/contract';
 import { Problem } from '@/shared/contracts/problem';
 
@@ -20,6 +21,8 @@ export interface CallInput<C extends ContractShape> {
   params?: ParamsIn<C>;
   query?: QueryIn<C>;
   body?: BodyIn<C>;
+  /** Where the page before ended; goes with the query of a list. */
+  cursor?: string | undefined;
   /** Idempotency key; make it once a wish, not once a try. */
   key?: string;
   file?: Blob;
@@ -28,12 +31,13 @@ export interface CallInput<C extends ContractShape> {
 
 const offlineProblem: Problem = { type: 'about:blank', title: 'offline', status: 0, detail: 'offline', code: 'offline', requestId: '' };
 
-function addressOf(path: string, params: unknown, query: unknown): string {
+function addressOf(path: string, params: unknown, query: unknown, cursor: string | undefined): string {
   const filled = path.replace(/:([A-Za-z]+)/g, (_whole, name: string) => encodeURIComponent(String(valueOf(params, name) ?? '')));
   const search = new URLSearchParams();
   if (typeof query === 'object' && query !== null) {
     for (const [name, value] of Object.entries(query)) if (value !== undefined && value !== null) search.set(name, String(value));
   }
+  if (cursor !== undefined) search.set('cursor', cursor);
   const text = search.toString();
   return text ? `${filled}?${text}` : filled;
 }
@@ -62,7 +66,7 @@ export async function callDoor<C extends ContractShape>(contract: C, input: Call
   if (input.key) headers['idempotency-key'] = input.key;
   let response: Response;
   try {
-    response = await fetch(addressOf(contract.path, input.params, input.query), {
+    response = await fetch(addressOf(contract.path, input.params, input.query, input.cursor), {
       method: contract.method,
       headers,
       credentials: 'same-origin',
@@ -78,10 +82,14 @@ export async function callDoor<C extends ContractShape>(contract: C, input: Call
     const status = response.status;
     throw new ApiProblem(problem.success ? problem.data : { ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
   }
-  // The contract's schema types the answer: what does not fit is a fault of the server, not something to show half of.
-  const parsed = contract.answer.safeParse(answer);
-  if (!parsed.success) throw new ApiProblem({ ...offlineProblem, status: response.status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
-  return parsed.data as AnswerOf<C>;
+  return readBy<C['answer']>(contract.answer, answer, response.status);
+}
+
+/** The contract's schema types the answer: what does not fit is a fault of the server, not something to show half of. */
+function readBy<S extends z.ZodType>(schema: S, answer: unknown, status: number): z.output<S> {
+  const parsed = schema.safeParse(answer);
+  if (parsed.success) return parsed.data;
+  throw new ApiProblem({ ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
 }
 
 /** Key of a read: the noun first, so that a write can mark a whole noun stale. */
@@ -108,8 +116,6 @@ export function useRead<C extends ContractShape>(contract: C, input: ReadInput<C
   });
 }
 
-type Page<C extends ContractShape> = AnswerOf<C> & { nextCursor: string | null };
-
 function cursorOf(page: unknown): string | undefined {
   const cursor = valueOf(page, 'nextCursor');
   return typeof cursor === 'string' ? cursor : undefined;
@@ -117,12 +123,10 @@ function cursorOf(page: unknown): string | undefined {
 
 /** Reads a list a page at a time: `data.pages[].items`, `fetchNextPage`, `hasNextPage`. */
 export function usePages<C extends ContractShape>(contract: C, input: ReadInput<C> = {}) {
-  return useInfiniteQuery<Page<C>, ApiProblem, { pages: Page<C>[] }, readonly unknown[], string | undefined>({
+  return useInfiniteQuery<AnswerOf<C>, ApiProblem, { pages: AnswerOf<C>[] }, readonly unknown[], string | undefined>({
     queryKey: [...keyOf(contract, input.params, input.query), 'pages'],
-    queryFn: async ({ pageParam, signal }) => {
-      const paged: unknown = { ...(input.query ?? {}), ...(pageParam ? { cursor: pageParam } : {}) };
-      return (await callDoor(contract, { params: input.params, query: paged as QueryIn<C>, signal })) as Page<C>;
-    },
+    queryFn: ({ pageParam, signal }) =>
+      callDoor(contract, { params: input.params, query: input.query, cursor: pageParam, signal }),
     initialPageParam: undefined,
     getNextPageParam: cursorOf,
     enabled: input.enabled ?? true,

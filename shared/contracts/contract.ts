@@ -75,7 +75,7 @@ type InputOf<C, K extends PropertyKey> = C extends { [P in K]: infer S }
 export type ParamsOf<C> = OutputOf<C, 'params'>;
 export type QueryOf<C> = OutputOf<C, 'query'>;
 export type BodyOf<C> = OutputOf<C, 'body'>;
-export type AnswerOf<C> = OutputOf<C, 'answer'>;
+export type AnswerOf<C extends Pick<ContractShape, 'answer'>> = z.output<C['answer']>;
 /** What the caller sends, before parsing. */
 export type ParamsIn<C> = InputOf<C, 'params'>;
 export type QueryIn<C> = InputOf<C, 'query'>;

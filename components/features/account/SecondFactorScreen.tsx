@@ -2,7 +2,7 @@
  * The six digits after the password. A code kept for emergencies works too.
  */
 import { useQueryClient } from '@tanstack/react-query';
-import { useLocalSearchParams, useRouter, type Href } from 'expo-router';
+import { useLocalSearchParams, useRouter } from 'expo-router';
 import { useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { z } from 'zod';
@@ -30,7 +30,7 @@ export function SecondFactorScreen() {
     const outcome = await (/^\d{6}$/.test(code) ? verifyTotp(code) : verifyBackupCode(code));
     if (outcome.outcome !== 'done') return setFailed(true);
     await queries.resetQueries();
-    router.replace((next && /^\/[^/\\]/.test(next) ? next : '/') as Href);
+    router.replace(next && /^\/[^/\\]/.test(next) ? next : '/');
   });
 
   return (

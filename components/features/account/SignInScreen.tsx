@@ -23,7 +23,7 @@ const SignInBody = z.strictObject({ email: Email, password: PasswordAgain });
 
 /** Only addresses of our own: `//elsewhere` and `https:` are not followed. */
 function safeNext(next: string | string[] | undefined): Href {
-  return (typeof next === 'string' && /^\/[^/\\]/.test(next) ? next : '/') as Href;
+  return (typeof next === 'string' && /^\/[^/\\]/.test(next) ? next : '/');
 }
 
 export function SignInScreen() {
@@ -37,7 +37,7 @@ export function SignInScreen() {
   const send = form.handleSubmit(async ({ email, password }) => {
     setFailed(null);
     const outcome = await signIn(email, password);
-    if (outcome.outcome === 'second_factor') return router.push(`/second-factor?next=${encodeURIComponent(String(safeNext(next)))}` as Href);
+    if (outcome.outcome === 'second_factor') return router.push(`/second-factor?next=${encodeURIComponent(String(safeNext(next)))}`);
     if (outcome.outcome !== 'done') return setFailed(outcome);
     await queries.resetQueries();
     router.replace(safeNext(next));

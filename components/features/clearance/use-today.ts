@@ -1,10 +1,12 @@
 // What Today shows: the server's clearance and course, and whether this phone holds a running session.
 
 import type { Href } from 'expo-router';
+import { useEffect } from 'react';
 import { useTranslation } from 'react-i18next';
 import { useRead } from '@/components/runtime/api';
 import { useFormat } from '@/components/runtime/format';
 import { useMe } from '@/components/runtime/me';
+import { reportUnused } from '@/components/runtime/report-unused';
 import { useRunningHere } from '@/components/runtime/running-here';
 import { useUnsent } from '@/components/runtime/unsent';
 import { readClearance, type ClearanceView } from '@/shared/contracts/clearance';
@@ -28,12 +30,12 @@ export type Today =
 const everyMs = 20_000;
 
 function callOf(answer: ClearanceView): Href {
-  return `tel:${answer.site.phone.replace(/[^+0-9]/g, '')}` as Href;
+  return `tel:${answer.site.phone.replace(/[^+0-9]/g, '')}`;
 }
 
 function stepOf(kind: TodayState, answer: ClearanceView): TodayStep {
   const call = { word: 'call', href: callOf(answer) };
-  const message = { word: 'message', href: '/messages' as Href };
+  const message = { word: 'message', href: '/messages' };
   const step = (main: TodayStep['main'], second: TodayStep['second'] = null): TodayStep => ({ kind, isHeld: kind === 'hold', main, second });
   switch (kind) {
     case 'running':
@@ -44,9 +46,9 @@ function stepOf(kind: TodayState, answer: ClearanceView): TodayStep {
     case 'acknowledgeFirst':
       return step({ word: 'acknowledge', href: '/acknowledge' });
     case 'diary':
-      return step({ word: 'diary', href: `/diary/${answer.diaryDueSessionId}` as Href });
+      return step({ word: 'diary', href: `/diary/${answer.diaryDueSessionId}` });
     case 'nextDay':
-      return step({ word: 'nextDay', href: `/diary/${answer.nextDayDueSessionId}?kind=next_day` as Href });
+      return step({ word: 'nextDay', href: `/diary/${answer.nextDayDueSessionId}?kind=next_day` });
     case 'start':
       return step({ word: 'start', href: '/set-up' });
     case 'check':
@@ -62,6 +64,19 @@ function stepOf(kind: TodayState, answer: ClearanceView): TodayStep {
   }
 }
 
+/** A permit that ran out before its session began: the stimulator's word is fetched and told, once a session. */
+function useUnusedPermit(accountId: string | undefined, answer: ClearanceView | undefined, again: () => unknown): void {
+  const isOpen = answer?.reasons.some(({ code }) => code === 'session_open') === true;
+  const sessionId = isOpen && !answer?.livePermitId ? answer?.openSessionId : null;
+  useEffect(() => {
+    if (!accountId || !sessionId) return;
+    // Not told is not lost: the next look at Today tries again.
+    void reportUnused(accountId, sessionId).then((isTold) => (isTold ? again() : undefined), () => undefined);
+    // `again` is new at every drawing; the session decides.
+    // eslint-disable-next-line react-hooks/exhaustive-deps
+  }, [accountId, sessionId]);
+}
+
 export function useToday(): Today {
   const { t } = useTranslation('clearance');
   const me = useMe();
@@ -72,6 +87,7 @@ export function useToday(): Today {
   const isRunningHere = useRunningHere();
   const { count } = useUnsent();
   const answer = clearance.data;
+  useUnusedPermit(me?.account.id, answer, clearance.refetch);
   // A failed read must not leave "you can start" on the page: an unknown is not a yes.
   if (clearance.isError) return { state: 'failed', retry: () => void clearance.refetch() };
   if (!answer || !me || (courseId !== undefined && course.isPending)) return { state: 'loading' };

@@ -12,7 +12,6 @@ import { space, useTheme } from '@/components/ui/theme';
 import { positions } from '@/shared/values/positions';
 import type { PrescriptionInput } from './PrescriptionEditor';
 
-type FormControl = Control<PrescriptionInput, unknown, unknown>;
 const cellRem = 11;
 const minute = 60;
 
@@ -44,7 +43,7 @@ export function DoseFields<Output>({ control }: { control: Control<PrescriptionI
             <FormNumberField name="dose.intensityMilliamp" control={control} label={t('intensity')} unit={t('unit.milliamp')} />
           </View>
           <View style={cell}>
-            <HoldField control={control as unknown as FormControl} />
+            <HoldField control={control} />
           </View>
           <View style={cell}>
             <FormNumberField name="dose.rampUpSeconds" control={control} label={t('rampUp')} unit={t('unit.seconds')} />
@@ -59,9 +58,9 @@ export function DoseFields<Output>({ control }: { control: Control<PrescriptionI
 }
 
 /** Written in minutes, kept in seconds. */
-function HoldField({ control }: { control: FormControl }) {
+function HoldField<Output>({ control }: { control: Control<PrescriptionInput, unknown, Output> }) {
   const { t } = useTranslation('prescription');
-  const { field, fieldState } = useController({ name: 'dose.holdSeconds', control });
+  const { field, fieldState } = useController<PrescriptionInput, 'dose.holdSeconds', Output>({ name: 'dose.holdSeconds', control });
   return (
     <NumberField
       label={t('hold')}
