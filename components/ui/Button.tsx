@@ -97,12 +97,13 @@ export function Button(props: ButtonProps) {
     alignItems: 'center',
     justifyContent: 'center',
     gap: space[2],
-    ...(grow ? { alignSelf: 'stretch' } : {}),
+    // A long word breaks into a second line before it leaves the page.
+    ...(grow ? { alignSelf: 'stretch' } : { maxWidth: '100%' }),
     ...(flush ? { marginStart: -(space[3] + stroke.firm) } : {}),
   });
 
   return (
-    <View style={grow ? { alignSelf: 'stretch', gap: space[2] } : { gap: space[1], alignItems: 'flex-start' }}>
+    <View style={grow ? { alignSelf: 'stretch', gap: space[2] } : { gap: space[1], alignItems: 'flex-start', maxWidth: '100%' }}>
       <Pressable
         ref={props.ref}
         role="button"
@@ -118,9 +119,11 @@ export function Button(props: ButtonProps) {
         style={({ hovered, pressed }) => shape(hovered || pressed)}
       >
         {icon}
-        <Text size={textSize} weight="bold" tone={isOff ? 'muted' : paint.word} align="center">
-          {busy ? (busyLabel ?? t('busy')) : label}
-        </Text>
+        <View style={{ flexShrink: 1, minWidth: 0 }}>
+          <Text size={textSize} weight="bold" tone={isOff ? 'muted' : paint.word} align="center">
+            {busy ? (busyLabel ?? t('busy')) : label}
+          </Text>
+        </View>
       </Pressable>
       {reason ? (
         <Text id={reasonId} size="small" tone="muted" align={grow ? 'center' : 'start'}>
