@@ -2,7 +2,7 @@
 
 import { useTranslation } from 'react-i18next';
 import { useMemo } from 'react';
-import { localMoment, addDays } from '@/shared/values/zone';
+import { addDays, isDate, localMoment } from '@/shared/values/zone';
 import { useMe } from './me';
 
 export interface Format {
@@ -11,6 +11,8 @@ export interface Format {
   day(instant: string): string;
   /** "3 Mar" */
   shortDay(instant: string): string;
+  /** "3 Mar 2026" of a day without a time, `YYYY-MM-DD`. */
+  date(day: string): string;
   /** "18:05" */
   time(instant: string): string;
   /** "Tue 3 Mar, 18:05" */
@@ -37,6 +39,8 @@ export function formatIn(language: string, zone: string): Format {
   const longDay = make({ weekday: 'long', day: 'numeric', month: 'long' });
   const shortDay = make({ day: 'numeric', month: 'short' });
   const clock = make({ hour: '2-digit', minute: '2-digit', hourCycle: 'h23' });
+  // A day of the calendar has no zone: read and written in the same one, it stays itself.
+  const calendar = new Intl.DateTimeFormat(language === 'en' ? 'en-GB' : language, { timeZone: 'UTC', day: 'numeric', month: 'short', year: 'numeric' });
   const both = make({ weekday: 'short', day: 'numeric', month: 'short', hour: '2-digit', minute: '2-digit', hourCycle: 'h23' });
   const at = (instant: string) => Date.parse(instant);
   const unit = (value: number, name: 'minute' | 'hour' | 'day') =>
@@ -46,6 +50,7 @@ export function formatIn(language: string, zone: string): Format {
     // Intl in English puts a comma after the weekday that nobody writes.
     day: (instant) => longDay.format(at(instant)).replace(',', ''),
     shortDay: (instant) => shortDay.format(at(instant)),
+    date: (written) => (isDate(written) ? calendar.format(at(`${written}T00:00:00Z`)) : written),
     time: (instant) => clock.format(at(instant)),
     dayTime: (instant) => both.format(at(instant)),
     nearDay: (instant, now) => {

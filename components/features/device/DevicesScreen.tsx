@@ -60,7 +60,7 @@ export function DevicesScreen() {
             { id: 'serial', header: t('register.serial'), cell: (row) => row.serial },
             { id: 'model', header: t('register.model'), hideOnPhone: true, cell: (row) => row.model },
             { id: 'firmware', header: t('register.firmware'), hideOnPhone: true, cell: (row) => row.firmware },
-            { id: 'calibration', header: t('register.calibration'), cell: (row) => row.calibrationDueOn },
+            { id: 'calibration', header: t('register.calibration'), cell: (row) => format.date(row.calibrationDueOn) },
             { id: 'state', header: t('register.state'), cell: (row) => <Tag tone={tones[row.state]} label={t(`register.states.${row.state}`)} /> },
             { id: 'with', header: t('register.with'), cell: (row) => row.assignedTo?.name ?? '' },
             { id: 'since', header: t('register.since'), cell: (row) => format.shortDay(row.stateSince) },

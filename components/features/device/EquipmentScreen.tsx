@@ -6,6 +6,7 @@ import { useTranslation } from 'react-i18next';
 import { View } from 'react-native';
 import { RecordShell } from '@/components/features/participant/pictures/RecordShell';
 import { usePages, useRead } from '@/components/runtime/api';
+import { useFormat } from '@/components/runtime/format';
 import { useMe } from '@/components/runtime/me';
 import { Card } from '@/components/ui/Card';
 import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
@@ -24,6 +25,7 @@ export function EquipmentScreen() {
   const { t } = useTranslation('equipment');
   const { participantId = '' } = useLocalSearchParams<{ participantId: string }>();
   const me = useMe();
+  const format = useFormat();
   const person = useRead(readParticipant, { params: { participantId } });
   const supplies = usePages(listSupplies, { params: { participantId }, query: {} });
   const rows = supplies.data?.pages.flatMap((page) => page.items) ?? [];
@@ -44,7 +46,7 @@ export function EquipmentScreen() {
               columns={[
                 { id: 'kind', header: t('supplies.kind'), isRowHeader: true, cell: (row) => t(`supplies.kinds.${row.kind}`) },
                 { id: 'lot', header: t('supplies.lot'), cell: (row) => row.lot },
-                { id: 'opened', header: t('supplies.openedOn'), cell: (row) => row.openedOn },
+                { id: 'opened', header: t('supplies.openedOn'), cell: (row) => format.date(row.openedOn) },
                 { id: 'uses', header: t('supplies.uses'), cell: (row) => (row.maxUses === null ? t('supplies.daysOnly', { count: row.maxDays }) : t('supplies.usesValue', { uses: row.uses, max: row.maxUses, days: row.maxDays })) },
                 { id: 'state', header: t('supplies.state'), cell: (row) => <Tag tone={row.endedAt ? 'muted' : 'steady'} label={t(row.endedAt ? 'supplies.ended' : 'supplies.inUse')} /> },
               ]}

@@ -36,7 +36,7 @@ export function PersonCard({ person, writes }: { person: ParticipantView; writes
           rows={[
             { label: t('email'), value: contact.email },
             { label: t('phone'), value: contact.phone },
-            { label: t('bornOn'), value: contact.bornOn },
+            { label: t('bornOn'), value: format.date(contact.bornOn) },
             { label: t('emergency'), value: t('page.contact', { name: contact.emergencyContact.name, phone: contact.emergencyContact.phone }) },
             { label: t('page.caregivers'), value: person.caregivers.map((caregiver) => caregiver.name).join(', ') || t('none') },
             { label: t('page.enrolled'), value: format.day(person.enrolledAt) },

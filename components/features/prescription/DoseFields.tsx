@@ -29,13 +29,13 @@ export function DoseFields<Output>({ control }: { control: Control<PrescriptionI
             <FormSelectField name="dose.electrodes.0.position" control={control} label={t('anode')} options={options} />
           </View>
           <View style={cell}>
-            <FormNumberField name="dose.electrodes.0.areaSquareCentimetre" control={control} label={t('area')} unit={t('unit.area')} />
+            <FormNumberField name="dose.electrodes.0.areaSquareCentimetre" control={control} label={t('anodeArea')} unit={t('unit.area')} />
           </View>
           <View style={cell}>
             <FormSelectField name="dose.electrodes.1.position" control={control} label={t('cathode')} options={options} />
           </View>
           <View style={cell}>
-            <FormNumberField name="dose.electrodes.1.areaSquareCentimetre" control={control} label={t('area')} unit={t('unit.area')} />
+            <FormNumberField name="dose.electrodes.1.areaSquareCentimetre" control={control} label={t('cathodeArea')} unit={t('unit.area')} />
           </View>
         </View>
         <View style={row}>

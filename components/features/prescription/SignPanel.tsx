@@ -58,7 +58,7 @@ export function SignPanel({ draft, before, isClinician, mayEdit, accountName, on
         {t(`verdict.${draft.verdict}`)}
       </Notice>
       <Card heading={t('review')}>
-        <Definition layout="rows" ruled rows={linesOf(draft, format, t)} />
+        <Definition layout="rows" ruled rows={linesOf(draft, format, t)} labelRem={18} />
       </Card>
       {before ? <ChangesCard before={before} after={draft} /> : null}
       {draft.reason ? <Text>{t('sessions:quoted', { text: draft.reason })}</Text> : null}
@@ -76,7 +76,7 @@ export function SignPanel({ draft, before, isClinician, mayEdit, accountName, on
               {t(isSecond ? 'meaningSecond' : 'meaning')}
             </Text>
             <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: space[3] }}>
-              {mayEdit && !isSecond ? <Button kind="secondary" label={t('back')} onPress={onEdit} /> : null}
+              {mayEdit && !isSecond ? <Button kind="secondary" size="large" label={t('back')} onPress={onEdit} /> : null}
               <Button label={isSecond ? t('signSecond') : t('sign', { version: (before?.version ?? 0) + 1 })} size="large" busy={sign.isPending} disabled={password === ''} onPress={() => void go()} />
             </View>
           </View>

@@ -19,7 +19,9 @@ export function VersionsCard({ versions, zone }: { versions: readonly Prescripti
         {versions.map((version) => (
           <View role="listitem" key={version.id} style={{ gap: space[1], paddingVertical: space[3], borderTopWidth: stroke.hair, borderColor: colour.line }}>
             <Text weight="bold">
-              {t('versionRow', { version: version.version ?? t('status.draft'), intensity: format.number(version.dose.intensityMilliamp), status: t(`status.${version.status}`) })}
+              {version.version === null
+                ? t('draftRow', { intensity: format.number(version.dose.intensityMilliamp) })
+                : t('versionRow', { version: version.version, intensity: format.number(version.dose.intensityMilliamp), status: t(`status.${version.status}`) })}
             </Text>
             {version.signatures.map((signature) => (
               <Text key={signature.meaning} size="small" tone="muted">
