@@ -2,7 +2,7 @@
 // It must not decide what current flows (the stimulator does, by the permit) or what was delivered (the server does).
 
 import type { AnswerOf } from '@/shared/contracts/contract';
-import type { PermitView, sendEvents } from '@/shared/contracts/permit';
+import type { PermitView, SessionEvent, sendEvents } from '@/shared/contracts/permit';
 import type { RedFlag } from '@/shared/values/codes';
 import { sensationStopsRun } from '@/shared/rules/pad-pain';
 import { bringClockAlong, type DemoSpeed } from './demo-speed';
@@ -213,6 +213,28 @@ export class SessionRun {
 
   setSpeed(speed: DemoSpeed): void {
     this.device?.setPace(speed);
+  }
+
+  /**
+   * The stimulator's own record that it never began on a permit that is over: without it the dose stays reserved. Null when this is not the
+   * permit's stimulator, or when it did begin.
+   */
+  async unusedEvent(permit: Pick<PermitView, 'id' | 'deviceId'>): Promise<SessionEvent | null> {
+    await this.open('if_free');
+    const status = this.device?.status();
+    if (!status || status.identity?.deviceId !== permit.deviceId || status.session?.permitId === permit.id) return null;
+    const run = await (await this.parts.store(this.accountId)).get('run', permit.id);
+    // After whatever was logged on the way to a start that did not come.
+    const sequence = run?.nextSequence ?? 0;
+    const nothing = { atSeconds: 0, onSeconds: 0, chargeCoulomb: 0 };
+    return {
+      id: crypto.randomUUID(),
+      sequence,
+      kind: 'ended',
+      reason: 'permit_void',
+      ...nothing,
+      lastSequence: sequence,
+    };
   }
 
   /** The person has seen the end and gone on to the diary. */
