@@ -2,9 +2,10 @@
  * The next session at a glance: which, how strong, how long, until when, and how the last one went; with the strip.
  */
 import { View } from 'react-native';
+import type { TFunction } from 'i18next';
 import { useTranslation } from 'react-i18next';
 import { Strip } from '@/components/features/course/pictures/Strip';
-import { useFormat } from '@/components/runtime/format';
+import { useFormat, type Format } from '@/components/runtime/format';
 import { Card } from '@/components/ui/Card';
 import { Definition, type DefinitionRow } from '@/components/ui/Definition';
 import { space } from '@/components/ui/theme';
@@ -12,15 +13,24 @@ import type { ClearanceView } from '@/shared/contracts/clearance';
 import type { CourseView } from '@/shared/contracts/course';
 import { whenOf } from './pictures/RefusalList';
 
+type Planned = NonNullable<ClearanceView['nextSession']>;
+
+/** A window that is open is no promise: "can start" stands only where nothing but the check is missing. */
+function windowRow({ asOf, ...clearance }: ClearanceView, { windowFrom, windowTo }: Planned, format: Format, t: TFunction): DefinitionRow {
+  if (windowFrom > asOf) return { label: t('clearance:today.from'), value: whenOf(windowFrom, asOf, format, t) };
+  const mayStart = clearance.allowed || clearance.readyForPrecheck || clearance.livePermitId !== null;
+  if (mayStart) return { label: t('clearance:today.startUntil'), value: whenOf(windowTo, asOf, format, t) };
+  return { label: t('clearance:today.planned'), value: t('clearance:today.plannedValue', { from: whenOf(windowFrom, asOf, format, t), until: format.time(windowTo) }) };
+}
+
 export function NextSessionCard({ clearance, course }: { clearance: ClearanceView; course: CourseView }) {
   const { t } = useTranslation('clearance');
   const format = useFormat(clearance.zone);
-  const { nextSession: next, dose, asOf } = clearance;
+  const { nextSession: next, dose } = clearance;
   const last = course.marks.findLast((mark) => mark.startedAt !== null && mark.deliveredMinutes !== null);
-  const isOpen = next !== null && next.windowFrom <= asOf;
   const rows: DefinitionRow[] = [];
   if (dose) rows.push({ label: t('today.strength'), value: t('today.strengthValue', { intensity: format.number(dose.intensityMilliamp), minutes: format.number(dose.holdSeconds / 60, 1) }) });
-  if (next) rows.push({ label: isOpen ? t('today.startUntil') : t('today.from'), value: whenOf(isOpen ? next.windowTo : next.windowFrom, asOf, format, t) });
+  if (next) rows.push(windowRow(clearance, next, format, t));
   if (last?.startedAt) {
     rows.push({
       label: t('today.lastSession'),

@@ -11,10 +11,13 @@ import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
 import { RefusalList } from './pictures/RefusalList';
 import { NextSessionCard } from './NextSessionCard';
+import type { TodayState } from './today-state';
 import { useToday, type Today } from './use-today';
 
 /** Pre-check reasons are not shown as refusals: the button below is what they ask for. */
 const ownStep = ['precheck_missing', 'precheck_expired', 'battery_low', 'diary_missing', 'live_permit'];
+
+const quietKinds: readonly TodayState[] = ['finished', 'withdrawn', 'check', 'start', 'waiting', 'running'];
 
 export function TodayScreen() {
   const { t } = useTranslation('clearance');
@@ -40,7 +43,8 @@ function TodayPage({ today }: { today: Extract<Today, { state: 'ready' }> }) {
   const { t } = useTranslation('clearance');
   const { clearance, course, sentence, day, step, unsent } = today;
   const shown = clearance.reasons.filter((reason) => !ownStep.includes(reason.code));
-  const quiet = step.kind === 'finished' || step.kind === 'withdrawn' || step.kind === 'check' || step.kind === 'start';
+  // What is allowed already, or over, has nothing in its way.
+  const quiet = quietKinds.includes(step.kind);
   return (
     <ParticipantShell title={sentence} tab="today" date={day} footer={<Footer today={today} />}>
       {step.isHeld && shown.length > 0 ? <RefusalList reasons={shown} zone={clearance.zone} now={clearance.asOf} /> : null}

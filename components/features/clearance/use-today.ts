@@ -64,10 +64,9 @@ function stepOf(kind: TodayState, answer: ClearanceView): TodayStep {
   }
 }
 
-/** A permit that ran out before its session began: the stimulator's word is fetched and told, once a session. */
+/** A permit that ended before its session began: the stimulator's word is fetched and told, once a session. */
 function useUnusedPermit(accountId: string | undefined, answer: ClearanceView | undefined, again: () => unknown): void {
-  const isOpen = answer?.reasons.some(({ code }) => code === 'session_open') === true;
-  const sessionId = isOpen && !answer?.livePermitId ? answer?.openSessionId : null;
+  const sessionId = answer && !answer.livePermitId ? answer.openSessionId : null;
   useEffect(() => {
     if (!accountId || !sessionId) return;
     // Not told is not lost: the next look at Today tries again.

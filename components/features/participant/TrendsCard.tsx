@@ -3,6 +3,7 @@
  */
 import { lazy, Suspense } from 'react';
 import { useTranslation } from 'react-i18next';
+import { easyEnd } from '@/components/features/reporting/pictures/trend-geometry';
 import { useRead } from '@/components/runtime/api';
 import { useFormat } from '@/components/runtime/format';
 import { Card } from '@/components/ui/Card';
@@ -12,10 +13,9 @@ import { readTrends } from '@/shared/contracts/participant';
 
 const TrendChart = lazy(() => import('@/components/features/reporting/pictures/TrendChart').then((module) => ({ default: module.TrendChart })));
 
-/** Scales of the rows: as asked (0–10, 0–3), and with some room above the largest for measures. */
+/** Scales of the rows: as asked (0–10, 0–3); measures end at an easy number above the largest. */
 const strongest = 10;
 const worstSkin = 3;
-const roomAbove = 1.15;
 
 export function TrendsCard({ participantId, zone }: { participantId: string; zone: string }) {
   const { t } = useTranslation('participants');
@@ -29,7 +29,7 @@ export function TrendsCard({ participantId, zone }: { participantId: string; zon
     range,
     points: points.map((point) => ({ at: Date.parse(point.at), value: value(point) })),
   });
-  const most = (value: (point: (typeof points)[number]) => number | null) => Math.max(1, ...points.map((point) => value(point) ?? 0)) * roomAbove;
+  const most = (value: (point: (typeof points)[number]) => number | null) => easyEnd(Math.max(1, ...points.map((point) => value(point) ?? 0)));
   return (
     <Card heading={t('trend.title')}>
       {read.isPending ? <LoadingState lines={6} /> : null}

@@ -49,7 +49,7 @@ function rowsOf(diary: DiaryView, t: ReturnType<typeof useTranslation>['t']): De
   const { after, nextDay } = diary;
   if (after) {
     return [
-      { label: t('diary:effect.headache'), value: t('of10', { strength: after.headacheAfter }) },
+      { label: t('headacheAfter'), value: t('of10', { strength: after.headacheAfter }) },
       ...(after.nothingFelt ? [{ label: t('feltLabel'), value: t('nothing') }] : []),
       ...after.effects.map((effect) => ({ label: t(`diary:effect.${effect.kind}`), value: t(effect.stillThere ? 'of10Still' : 'of10', { strength: effect.strength }) })),
       { label: t('skinLabel'), value: t(`diary:skin.${after.skin}`) },

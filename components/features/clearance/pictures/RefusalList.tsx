@@ -35,8 +35,14 @@ export function whenOf(instant: string, now: string, format: Format, t: Translat
   return t('clearance:until.other', { day: format.day(instant), time: format.time(instant) });
 }
 
+/** The server's sentence says when, too; here the next line does, so only what is in the way stands in the first. */
+function whatOf(reason: Reason, t: Translate, i18n: { exists(key: string): boolean }): string {
+  const key = `clearance:reason.${reason.code}`;
+  return reason.until && i18n.exists(key) ? t(key) : reason.sentence;
+}
+
 function RefusalCard({ reason, now, format }: { reason: Reason; now: string; format: Format }) {
-  const { t } = useTranslation('clearance');
+  const { t, i18n } = useTranslation('clearance');
   const { tone, word } = toneOf(reason);
   const passes = reason.until ? t('until.time', { until: whenOf(reason.until, now, format, t) }) : t('until.none');
   const dialled = reason.contact?.phone.replace(/[^+0-9]/g, '');
@@ -44,7 +50,7 @@ function RefusalCard({ reason, now, format }: { reason: Reason; now: string; for
     <Card edge={tone}>
       <View style={{ gap: space[2], alignItems: 'flex-start' }}>
         <Tag tone={tone} label={t(`today.${word}`)} />
-        <Text weight="bold">{reason.sentence}</Text>
+        <Text weight="bold">{whatOf(reason, t, i18n)}</Text>
         <Text>
           {passes} {t(`resolve.${reason.resolvedBy}`)}
         </Text>

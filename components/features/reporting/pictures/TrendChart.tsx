@@ -81,7 +81,7 @@ export function TrendChart(props: TrendChartProps) {
   if (times.length === 0) return <Text tone="muted">{t('trend.empty')}</Text>;
 
   const small = type('fine');
-  const margin = { start: rem(6.5), end: rem(1.5), top: rem(0.75), axis: rem(2) };
+  const margin = { start: rem(8.5), end: rem(1.5), top: rem(0.75), axis: rem(2) };
   const rowHeight = rem(5);
   const rowGap = rem(1.25);
   const ats = times.map((time) => time.at);

@@ -37,6 +37,16 @@ export function yOf(value: number, frame: RowFrame): number {
   return frame.top + frame.height * (1 - share);
 }
 
+/** Ends of a scale that read easily: these, times a power of ten. Own choice. */
+const easySteps = [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10];
+
+/** The next easy number at or above the largest value, as the end of a scale. */
+export function easyEnd(largest: number): number {
+  const power = 10 ** Math.floor(Math.log10(largest));
+  const step = easySteps.find((one) => one * power >= largest) ?? 10;
+  return step * power;
+}
+
 /** Unbroken runs of recorded points. */
 export function runsOf(points: readonly TrendPoint[], frame: RowFrame): Placed[][] {
   const runs: Placed[][] = [];
