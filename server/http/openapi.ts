@@ -5,6 +5,7 @@ import { authDoors } from '@/server/auth/doors';
 import type { Env } from '@/server/env';
 import type { ContractShape } from '@/shared/contracts/contract';
 import { Problem } from '@/shared/contracts/problem';
+import { answerExampleOf } from './answer-examples';
 
 type Json = Record<string, unknown>;
 
@@ -162,7 +163,10 @@ function exampleOf(example: unknown): Json {
 function answerOf(contract: ContractShape): Json {
   if (contract.raw) return { [rawTypeOf(contract)]: { schema: { type: 'string', contentEncoding: 'binary' } } };
   return {
-    'application/json': { schema: schemaOf(contract.answer, 'output'), ...exampleOf(contract.example?.answer) },
+    'application/json': {
+      schema: schemaOf(contract.answer, 'output'),
+      ...exampleOf(contract.example?.answer ?? answerExampleOf(contract)),
+    },
   };
 }
 
