@@ -73,5 +73,6 @@ function formProblem(error: unknown): BareProblem {
     return { status: 413, code: 'file.too_large', facts: { megabytes: fileBytesMost / 1_000_000 } };
   if (error.code === 'LIMIT_UNEXPECTED_FILE')
     return { status: 422, code: 'invalid', fields: [{ path: error.field ?? 'file', code: 'unknown_field' }] };
-  return { status: 422, code: 'invalid', fields: [{ path: error.field ?? '', code: 'not_allowed' }] };
+  const field = error.code === 'LIMIT_FILE_COUNT' ? 'file' : '';
+  return { status: 422, code: 'invalid', fields: [{ path: error.field ?? field, code: 'not_allowed' }] };
 }

@@ -55,7 +55,9 @@ function fieldsOfIssue(issue: Issue, input: unknown): BareField[] {
 function fieldsOfUnion(issue: z.core.$ZodIssueInvalidUnion, path: string, input: unknown): BareField[] {
   const [nearest] = [...issue.errors].sort((a, b) => a.length - b.length);
   if (!nearest || nearest.length === 0) {
-    const tag = issue.discriminator ? [...issue.path, issue.discriminator] : issue.path;
+    // The library names the field that tells the shapes apart in the path already.
+    const isNamed = issue.discriminator === undefined || issue.path.at(-1) === issue.discriminator;
+    const tag = isNamed ? issue.path : [...issue.path, issue.discriminator ?? ''];
     return [
       { path: tag.map(String).join('.') || path, code: valueAt(input, tag) === undefined ? 'missing' : 'not_one_of' },
     ];

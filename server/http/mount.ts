@@ -160,7 +160,8 @@ async function readRequest(
 ): Promise<ReadRequest | { problem: BareProblem }> {
   const params = contract.params?.safeParse(request.params);
   // An id that cannot be one is the id of nothing.
-  if (params && !params.success) return { problem: { status: 404, code: 'not_found' } };
+  if (params && (!params.success || unreadableFields(params.data).length > 0))
+    return { problem: { status: 404, code: 'not_found' } };
 
   const sent =
     contract.method === 'GET'
