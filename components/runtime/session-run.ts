@@ -217,12 +217,13 @@ export class SessionRun {
 
   /**
    * The stimulator's own record that it never began on a permit that is over: without it the dose stays reserved. Null when this is not the
-   * permit's stimulator, or when it did begin.
+   * permit's stimulator, when it did begin, or when its memory does not reach back to the permit: a wiped record proves nothing.
    */
-  async unusedEvent(permit: Pick<PermitView, 'id' | 'deviceId'>): Promise<SessionEvent | null> {
+  async unusedEvent(permit: Pick<PermitView, 'id' | 'deviceId' | 'issuedAt'>): Promise<SessionEvent | null> {
     await this.open('if_free');
     const status = this.device?.status();
     if (!status || status.identity?.deviceId !== permit.deviceId || status.session?.permitId === permit.id) return null;
+    if (status.remembersSinceMs === null || status.remembersSinceMs > Date.parse(permit.issuedAt)) return null;
     const run = await (await this.parts.store(this.accountId)).get('run', permit.id);
     // After whatever was logged on the way to a start that did not come.
     const sequence = run?.nextSequence ?? 0;

@@ -38,6 +38,8 @@ export interface KeptState {
   /** No time before this is believed. */
   notBeforeMs: number;
   highestCounter: number;
+  /** When its memory begins, by the time it was told at its first pairing; null = not known. */
+  remembersSinceMs: number | null;
   uptimeSeconds: number;
   /** The phone's time when `uptimeSeconds` was true. */
   wallMs: number;
@@ -56,6 +58,7 @@ export function emptyState(wallMs: number): KeptState {
     clockAheadMs: 0,
     notBeforeMs: 0,
     highestCounter: 0,
+    remembersSinceMs: null,
     uptimeSeconds: 0,
     wallMs,
     pace: 1,

@@ -118,6 +118,7 @@ export class SimulatedStimulator implements Stimulator {
     const toldMs = Date.parse(pairing.now);
     if (this.state.pairing?.deviceId !== pairing.deviceId) {
       this.state.highestCounter = 0;
+      this.state.remembersSinceMs = toldMs;
       this.state.notBeforeMs = 0;
       this.state.chargedAtMs = null;
     }
@@ -275,6 +276,7 @@ export class SimulatedStimulator implements Stimulator {
         stopWhy: session.stopWhy,
         endedWhy: session.endedWhy,
       },
+      remembersSinceMs: this.state.remembersSinceMs,
       recordIsKept: this.keeper.isKept,
       isFaulty: this.state.isFaulty,
     };

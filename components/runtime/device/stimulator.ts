@@ -111,6 +111,8 @@ export interface DeviceStatus {
   readonly identity: DeviceIdentity | null;
   readonly contacts: readonly ElectrodeContact[];
   readonly session: DeviceSession | null;
+  /** Of what was before, its record can say nothing. */
+  readonly remembersSinceMs: number | null;
   /** False once its record could not be written: then it starts nothing. */
   readonly recordIsKept: boolean;
   readonly isFaulty: boolean;

@@ -35,6 +35,12 @@ it('numbers it after what was logged on the way to a start that the stimulator r
   expect(logged).toBeGreaterThan(0);
 });
 
+it('says nothing of a permit from before its memory begins', async () => {
+  const { run } = await runBench(key);
+  const permit = await permitView(key);
+  expect(await run.unusedEvent({ ...permit, issuedAt: '2020-01-01T00:00:00.000Z' })).toBeNull();
+});
+
 it('says nothing of a permit that it began on, nor of another stimulator’s', async () => {
   const { run, pass } = await runBench(key);
   const identity = run.read().device?.identity;
