@@ -49,6 +49,7 @@ export const authDoors: readonly AuthDoor[] = [
     body: z.strictObject({ email: Email, redirectTo: z.literal('/reset-password').optional() }),
     answer: done,
     about: 'Mails a link to choose a new password; answers alike whether the address is known or not.',
+    example: { email: 'ines.marlow@harrowmere.example' },
   },
   {
     path: '/reset-password',
@@ -56,6 +57,7 @@ export const authDoors: readonly AuthDoor[] = [
     body: z.strictObject({ token: z.string().min(1).max(200), newPassword: NewPassword }),
     answer: done,
     about: 'Chooses a new password with the token of the mail and ends all sessions.',
+    example: { token: 'k3vY0mX9q2LrB7nT5wJ8cD1f', newPassword: 'twelve or more characters' },
   },
   {
     path: '/change-password',
@@ -67,6 +69,11 @@ export const authDoors: readonly AuthDoor[] = [
     }),
     answer: done,
     about: 'Changes one’s own password.',
+    example: {
+      currentPassword: 'the present one',
+      newPassword: 'twelve or more characters',
+      revokeOtherSessions: true,
+    },
   },
   {
     path: '/two-factor/enable',
@@ -75,6 +82,7 @@ export const authDoors: readonly AuthDoor[] = [
     answer: z.object({ totpURI: z.string(), backupCodes: z.array(z.string()) }),
     about:
       'Begins the second factor: the key for the authenticator and the emergency codes. It is on after the first code.',
+    example: { password: 'the password again' },
   },
   {
     path: '/two-factor/verify-totp',
@@ -82,6 +90,7 @@ export const authDoors: readonly AuthDoor[] = [
     body: z.strictObject({ code: Code }),
     answer: done,
     about: 'The six digits of the authenticator: completes a sign-in, or the setting up.',
+    example: { code: '274913' },
   },
   {
     path: '/two-factor/verify-backup-code',
@@ -89,6 +98,7 @@ export const authDoors: readonly AuthDoor[] = [
     body: z.strictObject({ code: Code }),
     answer: done,
     about: 'One of the emergency codes, each once.',
+    example: { code: 'aB3dE-9kLmN' },
   },
   {
     path: '/two-factor/generate-backup-codes',
@@ -96,6 +106,7 @@ export const authDoors: readonly AuthDoor[] = [
     body: z.strictObject({ password: PasswordAgain }),
     answer: z.object({ backupCodes: z.array(z.string()) }),
     about: 'New emergency codes; the old ones end.',
+    example: { password: 'the password again' },
   },
   {
     path: '/two-factor/disable',
@@ -103,5 +114,6 @@ export const authDoors: readonly AuthDoor[] = [
     body: z.strictObject({ password: PasswordAgain }),
     answer: done,
     about: 'Switches the second factor off.',
+    example: { password: 'the password again' },
   },
 ];

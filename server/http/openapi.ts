@@ -5,9 +5,24 @@ import { authDoors } from '@/server/auth/doors';
 import type { Env } from '@/server/env';
 import type { ContractShape } from '@/shared/contracts/contract';
 import { Problem } from '@/shared/contracts/problem';
+import { defaultProtocolSettings } from '@/shared/rules/protocol-defaults';
 import { answerExampleOf } from './answer-examples';
 
 type Json = Record<string, unknown>;
+
+/** An example too long to write by hand, and wrong as soon as a limit is added: the settings that a site begins with. */
+const madeExamples: Record<string, unknown> = {
+  'protocol.change': {
+    siteId: '7d2a9e4c-3b5f-4d6e-8a1c-0f9e8d7c6b5a',
+    basedOnVersion: 0,
+    settings: defaultProtocolSettings({
+      contacts: [{ name: 'Maren Oakes', email: 'maren.oakes@harrowmere.example', phone: '020 7946 0101' }],
+      consentRequiredFrom: '2026-05-11T08:00:00Z',
+    }),
+    reason: 'First version',
+    password: 'the password again',
+  },
+};
 
 /** What every door may answer beside its own: kept once under components. */
 const problems = {
@@ -140,7 +155,10 @@ function isOptional(field: unknown): boolean {
 function bodyOf(contract: ContractShape): Json {
   const schema = contract.body ? schemaOf(contract.body, 'input') : { type: 'object', additionalProperties: false };
   if (!contract.upload)
-    return { required: true, content: { 'application/json': { schema, ...exampleOf(contract.example?.body) } } };
+    return {
+      required: true,
+      content: { 'application/json': { schema, ...exampleOf(contract.example?.body ?? madeExamples[contract.name]) } },
+    };
   const properties = typeof schema.properties === 'object' && schema.properties !== null ? schema.properties : {};
   return {
     required: true,

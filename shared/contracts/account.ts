@@ -64,6 +64,7 @@ export const lookAtInvitation = contract({
   answer: InvitationView,
   refusals: ['invitation.unknown', 'invitation.expired', 'invitation.used'],
   about: 'What an invitation is for, before accepting it. Changes nothing.',
+  example: { body: { token: 'k3vY0mX9q2LrB7nT5wJ8cD1fG4hS6aZ0pE-uQ_iOx2M' } },
 });
 
 export const acceptInvitation = contract({
@@ -78,6 +79,14 @@ export const acceptInvitation = contract({
   refusals: ['invitation.unknown', 'invitation.expired', 'invitation.used', 'invitation.account_exists'],
   touches: ['account'],
   about: 'Accepts an invitation and sets the password. Not idempotent: the second call says that it was used.',
+  example: {
+    body: {
+      token: 'k3vY0mX9q2LrB7nT5wJ8cD1fG4hS6aZ0pE-uQ_iOx2M',
+      name: 'Ines Marlow',
+      password: 'twelve or more characters',
+      language: 'en',
+    },
+  },
 });
 
 export const joinByInvitation = contract({
@@ -91,6 +100,7 @@ export const joinByInvitation = contract({
   refusals: ['invitation.unknown', 'invitation.expired', 'invitation.used', 'invitation.other_address'],
   touches: ['account', 'caregiver'],
   about: 'A caregiver who already has an account joins another participant.',
+  example: { body: { token: 'k3vY0mX9q2LrB7nT5wJ8cD1fG4hS6aZ0pE-uQ_iOx2M' } },
 });
 
 export const stopMails = contract({
@@ -104,4 +114,5 @@ export const stopMails = contract({
   refusals: ['mail_stop.unknown'],
   touches: ['caregiver'],
   about: 'Stops the mails that this link stands in. Idempotent.',
+  example: { body: { token: 'k3vY0mX9q2LrB7nT5wJ8cD1fG4hS6aZ0pE-uQ_iOx2M' } },
 });

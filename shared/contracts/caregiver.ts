@@ -41,9 +41,21 @@ export const inviteCaregiver = contract({
   body: z.strictObject({ name: PersonName, email: Email, shares: Shares }),
   answer: CaregiverView,
   status: 201,
-  refusals: ['caregiver.already_invited', 'caregiver.address_is_staff_or_participant', 'caregiver.too_many', 'participant.withdrawn'],
+  refusals: [
+    'caregiver.already_invited',
+    'caregiver.address_is_staff_or_participant',
+    'caregiver.too_many',
+    'participant.withdrawn',
+  ],
   touches: ['caregiver'],
   about: 'Invites a caregiver by mail.',
+  example: {
+    body: {
+      name: 'Tam Marlow',
+      email: 'tam.marlow@harrowmere.example',
+      shares: { adherence: true, diary: false, missedMail: true },
+    },
+  },
 });
 
 export const changeShares = contract({
@@ -58,6 +70,7 @@ export const changeShares = contract({
   answer: CaregiverView,
   touches: ['caregiver'],
   about: 'Switches what a caregiver may see, from now on.',
+  example: { body: { adherence: true, diary: true, missedMail: false } },
 });
 
 export const removeCaregiver = contract({
@@ -130,4 +143,5 @@ export const setCaregiverCode = contract({
   answer: z.strictObject({ set: z.literal(true) }),
   touches: ['caregiver'],
   about: 'The caregiver’s own six digits, typed on the participant’s phone at an assisted session. Idempotent.',
+  example: { body: { code: '274913' } },
 });

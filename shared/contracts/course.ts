@@ -4,7 +4,17 @@ import { z } from 'zod';
 import { Instant, Line, LocalDate, Uuid } from '@/shared/values/primitives';
 import { contract } from './contract';
 
-export const markStates = ['delivered', 'partial', 'planned', 'next', 'missed', 'held', 'running', 'excused', 'cancelled'] as const;
+export const markStates = [
+  'delivered',
+  'partial',
+  'planned',
+  'next',
+  'missed',
+  'held',
+  'running',
+  'excused',
+  'cancelled',
+] as const;
 
 export const CourseMark = z.strictObject({
   plannedSessionId: Uuid,
@@ -92,6 +102,7 @@ export const pauseCourse = contract({
   refusals: ['course.not_active', 'course.already_so'],
   touches: ['course', 'clearance', 'permit', 'participant', 'worklist'],
   about: 'Pauses a course, which voids a live permit at once, or lets it go on.',
+  example: { body: { paused: true, reason: 'A cold, until it is over' } },
 });
 
 export const rescheduleSession = contract({
@@ -107,4 +118,5 @@ export const rescheduleSession = contract({
   refusals: ['planned_session.closed', 'planned_session.day_taken', 'planned_session.outside_prescription'],
   touches: ['course', 'clearance', 'participant'],
   about: 'Moves one planned session to another day, in the prescription’s hours.',
+  example: { body: { day: '2026-05-14', reason: 'Away on Wednesday' } },
 });

@@ -40,12 +40,29 @@ export const addDevice = contract({
   who: ['coordinator', 'clinician', 'administrator'],
   reach: 'site',
   once: true,
-  body: z.strictObject({ siteId: Uuid, label: Line, model: Line, serial: Line, firmware: Line, calibrationDueOn: LocalDate }),
+  body: z.strictObject({
+    siteId: Uuid,
+    label: Line,
+    model: Line,
+    serial: Line,
+    firmware: Line,
+    calibrationDueOn: LocalDate,
+  }),
   answer: DeviceView,
   status: 201,
   refusals: ['device.serial_taken'],
   touches: ['device'],
   about: 'Registers a stimulator.',
+  example: {
+    body: {
+      siteId: '7d2a9e4c-3b5f-4d6e-8a1c-0f9e8d7c6b5a',
+      label: 'LS-07',
+      model: 'Simulated stimulator',
+      serial: 'SIM-0007',
+      firmware: '1.0',
+      calibrationDueOn: '2027-05-01',
+    },
+  },
 });
 
 export const assignDevice = contract({
@@ -61,6 +78,7 @@ export const assignDevice = contract({
   refusals: ['device.not_in_stock', 'device.person_has_one', 'device.other_site', 'participant.withdrawn'],
   touches: ['device', 'participant', 'clearance'],
   about: 'Hands a stimulator to one person.',
+  example: { body: { participantId: '7d2a9e4c-3b5f-4d6e-8a1c-0f9e8d7c6b5a' } },
 });
 
 export const changeDeviceState = contract({
@@ -76,6 +94,7 @@ export const changeDeviceState = contract({
   refusals: ['device.state_not_reachable', 'version.stale'],
   touches: ['device', 'participant', 'clearance', 'permit'],
   about: 'Takes a stimulator back, quarantines or recalls it. A live permit on it is void at once.',
+  example: { body: { state: 'quarantined', reason: 'Cable frayed' } },
 });
 
 export const SupplyView = z.strictObject({
@@ -115,4 +134,5 @@ export const giveSupply = contract({
   refusals: ['supply.opened_in_future', 'participant.withdrawn'],
   touches: ['supply', 'participant', 'clearance'],
   about: 'Gives supplies of one lot; the earlier ones of that kind end. Uses and days are the site’s defaults.',
+  example: { body: { kind: 'sponge', lot: 'SP-2605', openedOn: '2026-05-11' } },
 });

@@ -91,4 +91,5 @@ export const moveDemoClock = contract({
   ],
   about:
     'Moves the clock of rules, jobs and permits forward, and answers once the jobs that came due have run. Not idempotent.',
+  example: { body: { advanceSeconds: 86_400 } },
 });

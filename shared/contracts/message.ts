@@ -35,4 +35,5 @@ export const sendMessage = contract({
   status: 201,
   touches: ['message', 'participant', 'worklist'],
   about: 'Writes to the site, or to the participant; a neutral mail says that there is a message.',
+  example: { body: { text: 'May I have my session in the evening tomorrow?' } },
 });

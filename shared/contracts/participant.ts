@@ -2,11 +2,33 @@
 // (consent, screening, training, watched sessions).
 
 import { z } from 'zod';
-import { Email, Instant, Language, Line, LocalDate, Paragraph, PersonName, Phone, Uuid, Zone, pageOf, pageQuery } from '@/shared/values/primitives';
+import {
+  Email,
+  Instant,
+  Language,
+  Line,
+  LocalDate,
+  Paragraph,
+  PersonName,
+  Phone,
+  Uuid,
+  Zone,
+  pageOf,
+  pageQuery,
+} from '@/shared/values/primitives';
 import { Adherence, CourseMark, CourseView } from './course';
 import { contract } from './contract';
 
-export const participantStates = ['invited', 'training', 'ready', 'too_early', 'held', 'paused', 'finished', 'withdrawn'] as const;
+export const participantStates = [
+  'invited',
+  'training',
+  'ready',
+  'too_early',
+  'held',
+  'paused',
+  'finished',
+  'withdrawn',
+] as const;
 export const ParticipantState = z.enum(participantStates);
 
 export const ParticipantRow = z.strictObject({
@@ -241,6 +263,7 @@ export const withdrawParticipant = contract({
   refusals: ['participant.withdrawn'],
   touches: ['participant', 'course', 'clearance', 'worklist'],
   about: 'Records that a person withdraws: permits end at once, records stay.',
+  example: { body: { reason: 'Moves abroad and does not wish to go on' } },
 });
 
 export const recordConsent = contract({
@@ -267,9 +290,29 @@ export const recordConsent = contract({
   }),
   answer: z.strictObject({ id: Uuid }),
   status: 201,
-  refusals: ['consent.not_given', 'consent.version_unknown', 'consent.signed_in_future', 'participant.withdrawn', 'protocol.none'],
+  refusals: [
+    'consent.not_given',
+    'consent.version_unknown',
+    'consent.signed_in_future',
+    'participant.withdrawn',
+    'protocol.none',
+  ],
   touches: ['participant', 'clearance'],
   about: 'Records a signed consent by its version.',
+  example: {
+    body: {
+      kind: 'own',
+      documentVersion: 1,
+      signedOn: '2026-05-11',
+      understandsPurpose: true,
+      understandsRisks: true,
+      understandsMayStop: true,
+      agreesToDataUse: true,
+      agreesToPhotos: true,
+      questionsAnswered: true,
+      copyGiven: true,
+    },
+  },
 });
 
 export const recordScreening = contract({
@@ -290,9 +333,24 @@ export const recordScreening = contract({
   }),
   answer: z.strictObject({ id: Uuid, outcome: z.enum(['clear', 'excluded', 'incomplete']), validUntil: Instant }),
   status: 201,
-  refusals: ['screening.item_unknown', 'screening.reason_missing', 'screening.clinician_decides', 'participant.withdrawn', 'protocol.none'],
+  refusals: [
+    'screening.item_unknown',
+    'screening.reason_missing',
+    'screening.clinician_decides',
+    'participant.withdrawn',
+    'protocol.none',
+  ],
   touches: ['participant', 'clearance'],
   about: 'Records the screening form; the outcome is the rule’s. Going on over a relative item is a clinician’s.',
+  example: {
+    body: {
+      answers: {
+        head_implant: { answer: 'no' },
+        migraine_or_daily_headache: { answer: 'yes', reason: 'Rare, mild, and known to the clinician' },
+      },
+      seizureHistory: false,
+    },
+  },
 });
 
 export const recordTraining = contract({
@@ -310,11 +368,22 @@ export const recordTraining = contract({
     helperName: PersonName.optional(),
     remark: Paragraph.optional(),
   }),
-  answer: z.strictObject({ id: Uuid, signedOff: z.boolean(), open: z.array(z.string()), validUntil: Instant.nullable() }),
+  answer: z.strictObject({
+    id: Uuid,
+    signedOff: z.boolean(),
+    open: z.array(z.string()),
+    validUntil: Instant.nullable(),
+  }),
   status: 201,
   refusals: ['training.skill_unknown', 'participant.withdrawn', 'protocol.none'],
   touches: ['participant', 'clearance'],
   about: 'Signs off the skills one by one; all of them make the sign-off.',
+  example: {
+    body: {
+      skills: { wet_and_place: true, check_contact: true, stop: true },
+      capability: { reading: true, quiet_seat: true },
+    },
+  },
 });
 
 export const recordWatchedSession = contract({
@@ -337,4 +406,5 @@ export const recordWatchedSession = contract({
   refusals: ['training.tolerability_missing', 'participant.withdrawn', 'protocol.none'],
   touches: ['participant', 'clearance'],
   about: 'Records a watched session, or that somebody is watching now.',
+  example: { body: { where: 'clinic', when: 'done', tolerated: 'well' } },
 });

@@ -1,7 +1,18 @@
 // Sites, their staff and their protocols (site limits, versions, contacts). Administrators write, staff read.
 
 import { z } from 'zod';
-import { Email, Instant, Line, PasswordAgain, PersonName, Phone, Uuid, Zone, pageOf, pageQuery } from '@/shared/values/primitives';
+import {
+  Email,
+  Instant,
+  Line,
+  PasswordAgain,
+  PersonName,
+  Phone,
+  Uuid,
+  Zone,
+  pageOf,
+  pageQuery,
+} from '@/shared/values/primitives';
 import { ProtocolSettings } from '@/shared/values/protocol-settings';
 import { staffRoles } from '@/shared/values/roles';
 import { SiteContact } from './account';
@@ -29,10 +40,16 @@ export const addSite = contract({
   once: true,
   body: z.strictObject({
     name: Line,
-    code: z.string().trim().regex(/^[A-Z]{2,4}$/),
+    code: z
+      .string()
+      .trim()
+      .regex(/^[A-Z]{2,4}$/),
     kind: z.enum(['service', 'research']),
     phone: Phone,
-    emergencyNumber: z.string().trim().regex(/^[0-9]{2,6}$/),
+    emergencyNumber: z
+      .string()
+      .trim()
+      .regex(/^[0-9]{2,6}$/),
     zone: Zone,
   }),
   answer: SiteView,
@@ -40,6 +57,16 @@ export const addSite = contract({
   refusals: ['site.code_taken'],
   touches: ['site', 'account'],
   about: 'Adds a site; the administrator who adds it belongs to it.',
+  example: {
+    body: {
+      name: 'Harbour House',
+      code: 'HH',
+      kind: 'service',
+      phone: '020 7946 0300',
+      emergencyNumber: '999',
+      zone: 'Europe/London',
+    },
+  },
 });
 
 export const StaffView = z.strictObject({
@@ -78,6 +105,14 @@ export const inviteStaff = contract({
   refusals: ['staff.address_taken'],
   touches: ['site'],
   about: 'Invites a member of staff to an own site by mail.',
+  example: {
+    body: {
+      email: 'tobin.ashe@harrowmere.example',
+      name: 'Tobin Ashe',
+      role: 'coordinator',
+      siteId: '7d2a9e4c-3b5f-4d6e-8a1c-0f9e8d7c6b5a',
+    },
+  },
 });
 
 export const suspendStaff = contract({
@@ -93,6 +128,7 @@ export const suspendStaff = contract({
   refusals: ['staff.oneself'],
   touches: ['site'],
   about: 'Suspends a member of staff, or lets them back; a suspension ends their sessions at once.',
+  example: { body: { suspended: true, reason: 'Has left the clinic' } },
 });
 
 /** Its shape stands with the values, since rules and queries read it too. */

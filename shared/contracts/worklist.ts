@@ -32,7 +32,11 @@ export const readWorklist = contract({
   path: '/api/worklist',
   who: ['coordinator', 'clinician', 'monitor'],
   reach: 'site',
-  query: z.strictObject({ ...pageQuery, whose: z.enum(['all', 'mine_and_nobodys']).default('all'), search: z.string().trim().max(100).optional() }),
+  query: z.strictObject({
+    ...pageQuery,
+    whose: z.enum(['all', 'mine_and_nobodys']).default('all'),
+    search: z.string().trim().max(100).optional(),
+  }),
   answer: pageOf(WorklistItem).extend({ needing: z.number().int(), goingOn: z.number().int(), asOf: Instant }),
   about: 'Who needs somebody, most urgent first, each row with why, since when, whose and the next step.',
 });
@@ -50,6 +54,7 @@ export const claimItem = contract({
   refusals: ['worklist.closed'],
   touches: ['worklist'],
   about: 'Takes a row (which acknowledges a page and stops its escalation), or gives it back.',
+  example: { body: { claim: true } },
 });
 
 export const reviewDecisions = ['lift', 'keep', 'noted', 'done'] as const;
@@ -83,7 +88,18 @@ export const recordReview = contract({
   status: 201,
   refusals: ['worklist.closed', 'review.clinician_decides', 'review.nothing_to_lift', 'review.lockout_open'],
   touches: ['worklist', 'review', 'participant', 'clearance'],
-  about: 'A signed look at a row: finding, decision, reason. A safety or review lockout is a clinician’s; a device hold also a coordinator’s.',
+  about:
+    'A signed look at a row: finding, decision, reason. A safety or review lockout is a clinician’s; a device hold also a coordinator’s.',
+  example: {
+    body: {
+      itemId: '7d2a9e4c-3b5f-4d6e-8a1c-0f9e8d7c6b5a',
+      finding: 'Redness gone by noon, skin intact',
+      decision: 'lift',
+      reason: 'Pad was dry; shown again how to wet it',
+      grading: { severity: 'mild', serious: false, causality: 'probable', expected: true },
+      password: 'the password again',
+    },
+  },
 });
 
 export const listReviews = contract({
