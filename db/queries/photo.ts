@@ -1,7 +1,8 @@
 // Skin photos, kept as rows: one backup, one transaction. Their bytes leave by findPhoto alone.
 
-import { eq, sql } from 'drizzle-orm';
+import { and, desc, eq, inArray, isNull, sql } from 'drizzle-orm';
 import type { Db } from '@/db/client';
+import { consent } from '@/db/schema/participant';
 import { photo } from '@/db/schema/session';
 
 export interface NewPhoto {
@@ -43,4 +44,21 @@ export async function findPhotoOwner(
 export async function findPhotoBytes(db: Db, photoId: string): Promise<Uint8Array | null> {
   const [row] = await db.select({ jpeg: photo.jpeg }).from(photo).where(eq(photo.id, photoId)).limit(1);
   return row?.jpeg ?? null;
+}
+
+/** Whether the consent that counts now, one's own or a guardian's, agrees to photos; false without one. */
+export async function findPhotoConsent(db: Db, participantId: string): Promise<boolean> {
+  const [row] = await db
+    .select({ agrees: sql<boolean>`coalesce(answers ->> 'agreesToPhotos' = 'true', false)` })
+    .from(consent)
+    .where(
+      and(
+        eq(consent.participantId, participantId),
+        inArray(consent.kind, ['own', 'guardian']),
+        isNull(consent.closedAt),
+      ),
+    )
+    .orderBy(desc(consent.createdAt), desc(consent.id))
+    .limit(1);
+  return row?.agrees ?? false;
 }

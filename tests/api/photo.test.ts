@@ -4,10 +4,12 @@ import { randomUUID } from 'node:crypto';
 import sharp from 'sharp';
 import { z } from 'zod';
 import type { AccountActor } from '@/server/action';
+import { recordConsent } from '@/server/features/consent/record-consent';
 import { addPhoto } from '@/server/features/photo/add-photo';
 import { readPhoto } from '@/server/features/photo/read-photo';
 import type { PermitView } from '@/shared/contracts/permit';
 import { openClinic, type Clinic, type Patient } from '../support/clinic';
+import { consentForm } from '../support/records';
 import { goToMorning, permitFor, readyPatient, runSession } from '../support/running';
 
 let clinic: Clinic;
@@ -126,4 +128,13 @@ it('refuses a photo of a session that has not begun', async () => {
     409,
     'session.not_ended',
   ]);
+});
+
+it('keeps no photo of somebody whose consent does not agree to photos', async () => {
+  const ready = await readyPatient(clinic, oona, siteId);
+  const body = { ...consentForm, agreesToPhotos: false };
+  await clinic.call(oona, recordConsent, { params: { participantId: ready.patient.participantId }, body });
+  const { sessionId } = await runSession(clinic, ready);
+  const small = await picture(9, 9).png().toBuffer();
+  expect(await refusalOf(small, ready.patient, sessionId)).toEqual([409, 'photo.no_consent']);
 });

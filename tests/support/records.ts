@@ -19,7 +19,7 @@ export const consentForm = {
   understandsRisks: true,
   understandsMayStop: true,
   agreesToDataUse: true,
-  agreesToPhotos: false,
+  agreesToPhotos: true,
   questionsAnswered: true,
   copyGiven: true,
 };

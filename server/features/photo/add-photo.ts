@@ -1,7 +1,7 @@
 // A skin photo of a session: read by its content, turned upright, made small, written anew as JPEG without anything it carried along.
 
 import { lockCourse } from '@/db/queries/course-state';
-import { countPhotos, insertPhoto } from '@/db/queries/photo';
+import { countPhotos, findPhotoConsent, insertPhoto } from '@/db/queries/photo';
 import { findSession } from '@/db/queries/session';
 import { action, notFound, refuse } from '@/server/action';
 import { readPicture } from '@/server/features/photo/read-picture';
@@ -14,6 +14,7 @@ export const addPhoto = action(contract, async ({ actor, params, file }, tx) => 
   const { participantId, siteId } = session;
   const whose = { participantId, siteId };
   if (session.startedAt === null) return refuse('session.not_ended', whose);
+  if (!(await findPhotoConsent(tx.db, participantId))) return refuse('photo.no_consent', whose);
   // Before the lock: making it small takes a while.
   const picture = await readPicture(file);
   if (!picture.isReadable) return refuse(picture.code, { ...whose, status: picture.status });
