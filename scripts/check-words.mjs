@@ -192,7 +192,7 @@ function checkLiteral(file, node) {
 function checkFile(name) {
   const source = readFileSync(name, 'utf8');
   const file = ts.createSourceFile(name, source, ts.ScriptTarget.Latest, true);
-  const isPage = !path.relative(root, name).startsWith('server');
+  const isPage = /^(app|components)\b/.test(path.relative(root, name));
   const askers = askersIn(file);
   const visit = (node) => {
     if (ts.isCallExpression(node) && node.arguments.length > 0) {
