@@ -97,6 +97,8 @@ export interface Call {
 export interface Server {
   calls: Call[];
   isReachable: boolean;
+  /** False: calls come in, their answers are lost. */
+  answersArrive: boolean;
   /** By "GET /api/me": the answer, or what makes it of the call. A status other than 200 stands beside it. */
   answers: Record<string, unknown>;
   statuses: Record<string, number>;
@@ -108,6 +110,7 @@ export function serve(answers: Record<string, unknown>): Server {
   const server: Server = {
     calls: [],
     isReachable: true,
+    answersArrive: true,
     answers,
     statuses: {},
     sent: (method, path) => server.calls.filter((call) => call.method === method && call.path === path),
@@ -119,6 +122,7 @@ export function serve(answers: Record<string, unknown>): Server {
     const body: unknown = typeof init?.body === 'string' ? JSON.parse(init.body) : undefined;
     const call = { method, path, key: new Headers(init?.headers).get('idempotency-key'), body };
     server.calls.push(call);
+    if (!server.answersArrive) throw new TypeError('the answer was lost');
     const name = `${method} ${path}`;
     const known = server.answers[name];
     const answer: unknown = typeof known === 'function' ? known(call) : known;
