@@ -4,7 +4,8 @@
 import { z } from 'zod';
 import { Email, Instant, PersonName, Phone } from './primitives';
 
-const amount = z.number().finite().min(0);
+/** Far beyond any amount of the trade, in whatever unit (own choice): a slip of the keyboard is told by its field. */
+const amount = z.number().min(0).max(1_000_000);
 
 /** Numbers only; whether they are allowed is `siteLimitsAllowed`, so that a refusal can name the ceiling. */
 export const siteLimitsSchema = z.strictObject({
