@@ -203,7 +203,8 @@ describe('clearance whatever the facts', () => {
         if (before.allowed) allowedBefore += 1;
         return before.allowed || !after.allowed;
       }),
-      { numRuns: 100 },
+      // Chance alone rarely makes a person who may start: one always is among them, worsened a little and a lot.
+      { numRuns: 100, examples: [[clearedFacts, 1], [clearedFacts, 12]] },
     );
     // The facts are not all refused anyway, or this proved nothing.
     expect(allowedBefore).toBeGreaterThan(0);
