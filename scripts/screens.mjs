@@ -1,6 +1,6 @@
 // What: `npm run screens`: a picture of every screen as every role sees it, 390 and 1440 wide, light and dark, with one page
-// that shows them all (screens-out/index.html). `npm run screens -- clinician /worklist` takes some of them.
-// Must not: check behaviour (tests/browser does), or touch the database of `npm start`.
+// that shows them all (screens-out/index.html). `npm run screens -- clinician /worklist` takes some of them; `--at ADDRESS`
+// takes them of a demo that is running already. Must not: check behaviour (tests/browser does), or touch the database of `npm start`.
 import { mkdirSync, rmSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { buildServer, buildWeb } from './build.mjs';
@@ -17,15 +17,15 @@ import { startThrowAwayCluster } from './ground/postgres.mjs';
 import { beforeEnd, end, freePort, main, Plainly } from './ground/processes.mjs';
 import { launchServer, untilReady } from './ground/server.mjs';
 import { contactSheet } from './screens/contact-sheet.mjs';
+import { takeVisit } from './screens/take.mjs';
 import { allVisits } from './screens/visits.mjs';
 
 const say = console.log;
 const output = path.join(root, 'screens-out');
-const looks = [390, 1440].flatMap((width) =>
-  ['light', 'dark'].map((mode) => ({ width, height: width === 390 ? 844 : 900, mode })),
-);
+const widths = [390, 1440];
 
 async function startDemo() {
+  await Promise.all([buildServer(say), buildWeb(say)]);
   const cluster = await startThrowAwayCluster(await postgresFolder(say));
   beforeEnd(cluster.stop);
   const data = path.join(workFolder, 'screens');
@@ -45,96 +45,38 @@ async function startDemo() {
   return address;
 }
 
-/** Signs in as a person does and keeps the cookies, so that each of the four looks need not do it again. */
-async function signIn(browser, address, { email, password }) {
-  const context = await browser.newContext({ baseURL: address, serviceWorkers: 'block' });
-  const page = await context.newPage();
-  await page.goto('/sign-in');
-  await page.getByLabel('E-mail address').fill(email);
-  await page.getByLabel('Password', { exact: true }).fill(password);
-  await page.getByRole('button', { name: 'Sign in', exact: true }).click();
-  await page.waitForURL((url) => url.pathname !== '/sign-in');
-  const kept = await context.storageState();
-  await context.close();
-  return kept;
-}
-
-async function settle(page) {
-  await page.waitForLoadState('networkidle');
-  await page.evaluate(() => document.fonts.ready);
-  await page
-    .locator('[aria-busy=true], [role=progressbar]:not([aria-valuenow])')
-    .first()
-    .waitFor({ state: 'hidden', timeout: 5_000 })
-    .catch(() => undefined);
-}
-
-async function take(browser, address, visit, storageState, look) {
-  const { width, height, mode } = look;
-  const context = await browser.newContext({
-    baseURL: address,
-    ...(storageState ? { storageState } : {}),
-    viewport: { width, height },
-    colorScheme: mode,
-    // Still pictures; and a worker that answers from its own store would hide what this build shows.
-    reducedMotion: 'reduce',
-    serviceWorkers: 'block',
-    timezoneId: 'Europe/London',
-    locale: 'en-GB',
-  });
-  const page = await context.newPage();
-  const faults = [];
-  page.on('pageerror', (error) => faults.push(String(error)));
-  page.on('console', (message) => message.type() === 'error' && faults.push(message.text()));
-  page.on('response', (answer) => answer.status() >= 500 && faults.push(`${answer.status()} ${answer.url()}`));
-  const name = [visit.role, visit.name, width, mode].join('--').replace(/[^\w-]+/g, '_');
-  const file = `${name}.png`;
-  try {
-    const place = typeof visit.path === 'function' ? await visit.path(page) : visit.path;
-    if (place === undefined) return undefined;
-    await page.goto(place);
-    await settle(page);
-    await visit.act?.(page);
-    await settle(page);
-    await page.screenshot({ path: path.join(output, file) });
-  } catch (error) {
-    faults.push(String(error.message ?? error));
-    await page.screenshot({ path: path.join(output, file) }).catch(() => undefined);
-  } finally {
-    await context.close();
-  }
-  return { ...visit, ...look, file, faults };
+/** What stands after `--at`, and the words that say which screens are wanted. */
+function readArguments() {
+  const words = process.argv.slice(2);
+  const at = words.indexOf('--at');
+  if (at < 0) return { at: undefined, wanted: words };
+  return { at: words[at + 1], wanted: words.filter((_, index) => index !== at && index !== at + 1) };
 }
 
 await main(async () => {
   checkNode();
+  const { at, wanted } = readArguments();
   await installPackages(say);
   await installChromium(say);
-  await Promise.all([buildServer(say), buildWeb(say)]);
-  const address = await startDemo();
+  const address = at ?? (await startDemo());
   const { chromium } = await import('playwright-core');
   const browser = await chromium.launch({ executablePath: chromiumPath(), args: isRoot ? ['--no-sandbox'] : [] });
   beforeEnd(() => browser.close());
 
   const accounts = await (await fetch(`${address}/api/demo/accounts`)).json();
-  const wanted = process.argv.slice(2);
   const visits = (await allVisits(accounts)).filter((visit) =>
     wanted.every((word) => `${visit.role} ${visit.name}`.includes(word)),
   );
   if (visits.length === 0) throw new Plainly(`No screen is called ${wanted.join(' ')}.`);
 
-  rmSync(output, { recursive: true, force: true });
+  // Some are taken again while others stay.
+  if (wanted.length === 0) rmSync(output, { recursive: true, force: true });
   mkdirSync(output, { recursive: true });
-  const signedIn = new Map();
   const pictures = [];
   for (const visit of visits) {
-    const { account } = visit;
-    if (account && !signedIn.has(account.email)) signedIn.set(account.email, await signIn(browser, address, account));
-    const taken = await Promise.all(
-      looks.map((look) => take(browser, address, visit, account && signedIn.get(account.email), look)),
-    );
-    pictures.push(...taken.filter(Boolean));
-    say(`${visit.role.padEnd(14)} ${visit.name}${taken.some((one) => one === undefined) ? '  (nothing to show)' : ''}`);
+    const before = pictures.length;
+    for (const width of widths) pictures.push(...(await takeVisit({ browser, address, output }, visit, width)));
+    say(`${visit.role.padEnd(14)} ${visit.name}${pictures.length === before ? '  (nothing to show)' : ''}`);
   }
   writeFileSync(path.join(output, 'index.html'), contactSheet(pictures));
 

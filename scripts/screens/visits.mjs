@@ -1,9 +1,10 @@
 // What: which screens are pictured, as whom, and what is done there first. The addresses come from shared/contracts/screens.ts,
-// so a new screen is pictured without a line here; moments in between (a question answered, a dialog open) are listed below.
+// so a new screen is pictured without a line here; moments in between (a question answered, a dialog open) stand in moments.mjs.
 // Must not: know ids; they are asked of the demo that is running.
 import path from 'node:path';
 import { build } from 'esbuild';
 import { root } from '../ground/paths.mjs';
+import { moments } from './moments.mjs';
 
 async function readScreens() {
   const { outputFiles } = await build({
@@ -17,7 +18,7 @@ async function readScreens() {
   return (await import(`data:text/javascript;base64,${source}`)).screens;
 }
 
-async function ask(page, address) {
+export async function ask(page, address) {
   const answer = await page.request.get(address);
   return answer.ok() ? answer.json() : undefined;
 }
@@ -48,20 +49,6 @@ function filled(address, role) {
     }
     return place;
   };
-}
-
-/** What an address alone does not show. Each: who, a name, where, and what to do there. */
-function moments(accounts) {
-  const inState = (state) => accounts.find((account) => account.state === state);
-  return [
-    // Today looks different in every state a participant can be in.
-    ...['training', 'ready', 'too_early', 'held', 'paused', 'finished', 'withdrawn'].map((state) => ({
-      role: 'participant',
-      account: inState(state),
-      name: `/today ${state}`,
-      path: '/today',
-    })),
-  ].filter((moment) => moment.account);
 }
 
 export async function allVisits(accounts) {
