@@ -4,19 +4,17 @@
 
 import { millisecondsOf } from '@/shared/values/units';
 import type { PermitClaims } from '@/shared/contracts/permit';
-import type { Polarity } from '@/shared/values/codes';
 import { chanceAt, seedOf } from './chance';
 import { checkPermit, type PermitCheck, type PermitFinding } from './check-permit';
-import { gradeOf, kiloohmAt } from './contact-model';
 import { DeviceClock, type Clocks } from './device-clock';
 import { RecordKeeper } from './device-record';
 import { emptyState, freshSession, type DeviceStore, type KeptSession, type KeptState } from './device-state';
 import { happen, measureUpTo, stateOf, stopAt, type Surroundings, type Written } from './measure';
+import { arePlacedSo, attendPad, contactsOf, liftPad, placePads, type PlacedElectrode } from './pads';
 import type {
   DeviceIdentity,
   DeviceRecord,
   DeviceStatus,
-  ElectrodeContact,
   Pairing,
   StartAnswer,
   Stimulator,
@@ -137,41 +135,26 @@ export class SimulatedStimulator implements Stimulator {
     return { deviceId, serial, firmware, batteryPercent: Math.floor(this.state.batteryPercent) };
   }
 
-  measureContact(electrodes: readonly { position: string; polarity: Polarity }[]): void {
+  measureContact(electrodes: readonly PlacedElectrode[]): void {
     if (this.running() !== null) return;
-    const placedAtSeconds = this.clock.settle();
-    const set = `${this.state.pairing?.serial ?? ''}:${this.state.highestCounter}`;
-    const placed = new Map(this.state.pads.map((pad) => [pad.position, pad]));
-    this.state.electrodes = electrodes.map(({ position, polarity }) => ({ position, polarity }));
-    this.state.pads = electrodes.map(({ position }) => {
-      const seed = seedOf(`${set}:${position}`);
-      const there = placed.get(position);
-      // The same pad as a moment ago: it has gone on soaking.
-      if (there?.seed === seed && !there.isLifted) return there;
-      return { position, seed, placedAtSeconds, attendedAtSeconds: null, isLifted: false };
-    });
+    placePads(this.state, electrodes, this.clock.settle());
     this.startTicking();
     this.tell();
   }
 
   attend(position: string): void {
-    const uptime = this.clock.settle();
-    const pad = this.state.pads.find((one) => one.position === position);
-    if (!pad) return;
-    pad.attendedAtSeconds ??= uptime;
-    pad.isLifted = false;
+    attendPad(this.state, position, this.clock.settle());
     this.tell();
   }
 
   /** What a wearer can do to a pad and no app can: it comes off. For trying what happens then. */
   lift(position: string): void {
-    const pad = this.state.pads.find((one) => one.position === position);
-    if (pad) pad.isLifted = true;
+    liftPad(this.state, position);
     this.tell();
   }
 
   async start(permitToken: string): Promise<StartAnswer> {
-    const { pairing, electrodes } = this.state;
+    const { pairing } = this.state;
     if (pairing === null) return { started: false, why: 'not_paired' };
     if (this.state.isFaulty) return { started: false, why: 'faulty' };
     if (this.running() !== null) return { started: false, why: 'session_running' };
@@ -185,12 +168,7 @@ export class SimulatedStimulator implements Stimulator {
     });
     if (!finding.ok) return { started: false, why: finding.why };
     const { claims } = finding;
-    const isPlacedSo =
-      claims.montage.length === electrodes.length &&
-      claims.montage.every(({ position, polarity }) =>
-        electrodes.some((one) => one.position === position && one.polarity === polarity),
-      );
-    if (!isPlacedSo) return { started: false, why: 'permit_other_placement' };
+    if (!arePlacedSo(this.state, claims.montage)) return { started: false, why: 'permit_other_placement' };
     if (!this.isContactGood()) return { started: false, why: 'contact_not_good' };
     return this.begin(claims);
   }
@@ -243,17 +221,7 @@ export class SimulatedStimulator implements Stimulator {
   }
 
   private isContactGood(): boolean {
-    return this.contacts().every((contact) => contact.grade === 'good');
-  }
-
-  private contacts(): ElectrodeContact[] {
-    const uptime = this.clock.uptime();
-    return this.state.electrodes.flatMap(({ position, polarity }) => {
-      const pad = this.state.pads.find((one) => one.position === position);
-      if (!pad) return [];
-      const kiloohm = kiloohmAt(pad, uptime);
-      return [{ position, polarity, kiloohm, grade: gradeOf(kiloohm) }];
-    });
+    return contactsOf(this.state, this.clock.uptime()).every((contact) => contact.grade === 'good');
   }
 
   private sessionSeconds(session: KeptSession): number {
@@ -265,7 +233,7 @@ export class SimulatedStimulator implements Stimulator {
     const seconds = session === null ? 0 : this.sessionSeconds(session);
     return {
       identity: pairing === null ? null : this.identityOf(pairing.deviceId, pairing.serial),
-      contacts: this.contacts(),
+      contacts: contactsOf(this.state, this.clock.uptime()),
       session: session && {
         sessionId: session.sessionId,
         permitId: session.permitId,
