@@ -460,8 +460,17 @@ tell(
     await participant.press('I have read this');
     // What was felt is asked again the day after, before anything else.
     await participant.see('How are you after the last session');
-    await participant.press('Answer four questions');
-    await participant.see('Did you feel any of these?');
+    await participant.press('Answer three questions');
+    await participant.see('Is the skin still red today?');
+    await participant.choose('Is the skin still red today?', 'No, it looks as always');
+    await participant.press('Next');
+    await participant.see('How strong was your headache since then?');
+    await participant.choose('How strong was your headache since then?', '1');
+    await participant.press('Next');
+    await participant.see('Did any of these happen?');
+    await participant.tick('None of these');
+    await participant.press('Send to the clinic');
+    await participant.page.getByRole('heading', { level: 1, name: 'Recorded' }).waitFor();
   },
 );
 

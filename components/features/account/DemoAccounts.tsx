@@ -36,9 +36,9 @@ export function DemoAccounts({ onChoose }: { onChoose(email: string, password: s
           {shownOf(read.data).map((account) => (
             <View
               key={account.email}
-              style={{ flexDirection: 'row', flexWrap: 'wrap', alignItems: 'center', justifyContent: 'space-between', gap: space[2] }}
+              style={{ flexDirection: 'row', alignItems: 'center', justifyContent: 'space-between', gap: space[3] }}
             >
-              <View style={{ flexShrink: 1 }}>
+              <View style={{ flexShrink: 1, minWidth: 0 }}>
                 <Text weight="bold">{account.name}</Text>
                 <Text size="small" tone="muted">
                   {[t(`role.${account.role}`), account.state ? t(`state.${account.state}`) : null, account.site].filter(Boolean).join(' · ')}

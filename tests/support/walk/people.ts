@@ -111,7 +111,6 @@ export async function story(walkers: () => readonly Walker[], work: () => Promis
         return `On ${page.url()}:\n${text}\n${faults.join('\n')}`;
       }),
     );
-    if (error instanceof Error) error.message = `${error.message}\n\n${pages.join('\n\n')}`;
-    throw error;
+    throw new Error(pages.join('\n\n'), { cause: error });
   }
 }
