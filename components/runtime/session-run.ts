@@ -6,17 +6,16 @@ import type { PermitView, SessionEvent, sendEvents } from '@/shared/contracts/pe
 import type { RedFlag } from '@/shared/values/codes';
 import { sensationStopsRun } from '@/shared/rules/pad-pain';
 import { bringClockAlong, type DemoSpeed } from './demo-speed';
-import { openDeviceStore } from './device/device-state';
-import { SimulatedStimulator } from './device/simulated-stimulator';
+import type { SimulatedStimulator } from './device/simulated-stimulator';
 import type { DeviceIdentity, DeviceStatus, StartAnswer } from './device/stimulator';
-import { monotonicSeconds, wallMilliseconds } from './clock';
 import { logEvents, type EventDraft, type RunChange } from './event-log';
 import { contactEvents, entryEvents, freshRun, openingEvents } from './run-events';
-import { findRun, phoneStore, type Advice, type PhoneStore, type RunRow } from './phone-store';
+import { findRun, type Advice, type RunRow } from './phone-store';
 import { keepMe } from './kept-me';
-import { claimStimulator, type Claim } from './one-page';
+import type { Claim } from './one-page';
+import { realParts, type RunParts } from './run-parts';
 import { setRunningHere } from './running-here';
-import { senderOf, type UnsentSender } from './unsent-sender';
+import type { UnsentSender } from './unsent-sender';
 
 export interface RunView {
   /**
@@ -28,33 +27,8 @@ export interface RunView {
   device: DeviceStatus | null;
   speed: number;
 }
-export interface RunParts {
-  stimulator(accountId: string): Promise<SimulatedStimulator>;
-  store(accountId: string): Promise<PhoneStore>;
-  sender(accountId: string): UnsentSender;
-  claim(accountId: string, claim: Claim, onLost: () => void): Promise<boolean>;
-  monotonicSeconds(): number;
-}
-
 /** Samples go out this often; at the end at once. By real time, so that a faster demo sends no more often. */
 const samplesEverySeconds = 5;
-
-export const realParts: RunParts = {
-  stimulator: async (accountId) =>
-    new SimulatedStimulator({
-      monotonicSeconds,
-      wallMilliseconds,
-      store: await openDeviceStore(accountId),
-      every: (milliseconds, call) => {
-        const timer = setInterval(call, milliseconds);
-        return () => clearInterval(timer);
-      },
-    }),
-  store: phoneStore,
-  sender: senderOf,
-  claim: claimStimulator,
-  monotonicSeconds,
-};
 
 const nothingYet: RunView = { phase: 'unknown', run: null, device: null, speed: 1 };
 
