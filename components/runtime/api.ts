@@ -138,8 +138,9 @@ export function useCall<C extends ContractShape>(contract: C) {
   const queries = useQueryClient();
   return useMutation<AnswerOf<C>, ApiProblem, CallInput<C>>({
     mutationFn: (input) => callDoor(contract, input),
-    onSuccess: async () => {
-      await Promise.all((contract.touches ?? []).map((noun) => queries.invalidateQueries({ queryKey: [noun] })));
+    onSuccess: () => {
+      // Not waited for: a form that is emptied only after the lists were read anew would take what was typed meanwhile.
+      for (const noun of contract.touches ?? []) void queries.invalidateQueries({ queryKey: [noun] });
     },
   });
 }
