@@ -97,7 +97,7 @@ const storedFacts: z.ZodType<Record<string, string | number | boolean | null>> =
 const ownerId = sql<string | null>`(
   select c.account_id from worklist_claim c where c.item_id = worklist_item.id order by c.created_at desc, c.id desc limit 1)`;
 
-/** The order of shared/rules/worklist.ts: nobody's first, then by level, then the newest. A test compares the two. */
+/** The order of shared/rules/worklist.ts: by level, then nobody's first, then the newest. A test compares the two. */
 const ownedRank = sql<number>`case when ${ownerId} is null then 0 else 1 end`;
 const levelRank = sql<number>`array_position(array[${sql.join(
   worklistLevels.map((level) => sql`${level}`),
@@ -178,8 +178,8 @@ function matching({ search, byName }: ItemSearch): SQL | undefined {
 function afterPosition(position: ItemPosition): SQL {
   const { isOwned, level, openedAt, id } = position;
   const rank = worklistLevels.indexOf(level) + 1;
-  return sql`((${ownedRank}, ${levelRank}) > (${isOwned ? 1 : 0}::int, ${rank}::int)
-    or ((${ownedRank}, ${levelRank}) = (${isOwned ? 1 : 0}::int, ${rank}::int)
+  return sql`((${levelRank}, ${ownedRank}) > (${rank}::int, ${isOwned ? 1 : 0}::int)
+    or ((${levelRank}, ${ownedRank}) = (${rank}::int, ${isOwned ? 1 : 0}::int)
       and (${worklistItem.openedAt} < ${openedAt} or (${worklistItem.openedAt} = ${openedAt} and ${worklistItem.id} > ${id}))))`;
 }
 
@@ -200,7 +200,7 @@ export async function listItems(db: Db, want: ItemSearch): Promise<ItemRecord[]>
         want.after ? afterPosition(want.after) : undefined,
       ),
     )
-    .orderBy(asc(ownedRank), asc(levelRank), desc(worklistItem.openedAt), asc(worklistItem.id))
+    .orderBy(asc(levelRank), asc(ownedRank), desc(worklistItem.openedAt), asc(worklistItem.id))
     .limit(want.limit);
   return rows.map((row) => ({ ...row, facts: storedFacts.parse(row.facts) }));
 }

@@ -4,8 +4,8 @@
 import { worklistLevels, type Completeness, type WorklistLevel } from '@/shared/values/codes';
 import { parseInstant } from '@/shared/values/zone';
 
-/** Smaller comes first, part by part: nobody's before somebody's, then level, then the newest. */
-export type WorklistRank = readonly [owned: number, level: number, age: number];
+/** Smaller comes first, part by part: the level, so that a safety matter stays on top whoever has it; nobody's before somebody's; the newest. */
+export type WorklistRank = readonly [level: number, owned: number, age: number];
 export type WorklistFacts = {
   readonly level: WorklistLevel;
   readonly ownerAccountId: string | null;
@@ -23,7 +23,7 @@ export type SessionReportFacts = {
 export type LookReason = 'strong_effect' | 'stopped_early' | 'first_session' | 'record_conflict';
 
 export function worklistRank({ level, ownerAccountId, openedAt }: WorklistFacts): WorklistRank {
-  return [ownerAccountId === null ? 0 : 1, worklistLevels.indexOf(level), -(parseInstant(openedAt) ?? 0)];
+  return [worklistLevels.indexOf(level), ownerAccountId === null ? 0 : 1, -(parseInstant(openedAt) ?? 0)];
 }
 
 export function compareRank(a: WorklistRank, b: WorklistRank): number {

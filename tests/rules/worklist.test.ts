@@ -11,20 +11,20 @@ const item = (level: (typeof worklistLevels)[number], ownerAccountId: string | n
 });
 
 describe('rankWorklist', () => {
-  it('puts nobody’s before somebody’s, then the level, then the newest', () => {
+  it('goes by level, then nobody’s before somebody’s, then the newest', () => {
     const wanted = [
       item('safety', null, '2026-05-12T09:00:00Z'),
       item('safety', null, '2026-05-12T08:00:00Z'),
-      item('review', null, '2026-05-12T10:00:00Z'),
-      item('due', null, '2026-05-12T10:00:00Z'),
       item('safety', 'a1', '2026-05-12T11:00:00Z'),
+      item('review', null, '2026-05-12T10:00:00Z'),
       item('flag', 'a1', '2026-05-12T11:00:00Z'),
+      item('due', null, '2026-05-12T10:00:00Z'),
     ];
     expect(rankWorklist([...wanted].reverse())).toEqual(wanted);
   });
 
   it('orders the levels from safety to due', () => {
-    const ranks = worklistLevels.map((level) => worklistRank(item(level, null, '2026-05-12T09:00:00Z'))[1]);
+    const ranks = worklistLevels.map((level) => worklistRank(item(level, null, '2026-05-12T09:00:00Z'))[0]);
     expect(ranks).toEqual([0, 1, 2, 3, 4, 5]);
   });
 

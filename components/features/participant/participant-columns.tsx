@@ -49,7 +49,7 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
         </View>
       ),
     },
-    { id: 'state', header: t('column.state'), flex: 0, minRem: 7.5, cell: (row) => <Tag tone={stateTones[row.state]} label={t(`state.${row.state}`)} /> },
+    { id: 'state', header: t('column.state'), flex: 0, minRem: 8.75, cell: (row) => <Tag tone={stateTones[row.state]} label={t(`state.${row.state}`)} /> },
     { id: 'course', header: t('column.course'), flex: 2, minRem: 13, bareOnPhone: true, cell: (row) => (row.marks.length > 0 ? <Strip marks={row.marks} size="row" zone={format.zone} /> : muted(t('noCourse'))) },
     {
       id: 'adherence',
@@ -87,7 +87,7 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
       minRem: 7,
       cell: (row) => (row.lastEffect ? t('effect', { kind: t(`diary:effect.${row.lastEffect.kind}`), strength: row.lastEffect.strength, since: format.since(row.lastEffect.at, now) }) : muted(t('none'))),
     },
-    { id: 'next', header: t('column.next'), flex: 0, minRem: 7, cell: (row) => (row.nextFrom ? format.dayTime(row.nextFrom) : muted(t('none'))) },
+    { id: 'next', header: t('column.next'), flex: 0, minRem: 7, cell: (row) => (row.nextFrom === null ? muted(t('none')) : row.nextFrom <= now ? t('nextNow') : format.dayTime(row.nextFrom)) },
     { id: 'since', header: t('column.since'), flex: 0, minRem: 4, sortable: true, hideOnPhone: true, cell: (row) => muted(format.shortDay(row.since)) },
   ];
 }

@@ -76,7 +76,7 @@ export function WorklistScreen() {
       place="worklist"
       subtitle={first ? t('subtitle', { needing: t('needing', { count: first.needing }), goingOn: t('goingOn', { count: first.goingOn }) }) : t('common:state.loading')}
       actions={
-        <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: space[3], alignItems: 'flex-end' }}>
+        <View style={{ flexDirection: 'row', flexWrap: 'wrap', flexShrink: 1, gap: space[3], alignItems: 'flex-end' }}>
           <View style={{ minWidth: rem(searchRem) }}>
             <TextField label={t('find')} value={search} onChange={(text) => router.setParams({ search: text })} trailing={<KeyHint keys="/" />} autoComplete="off" inputRef={keepBox} />
           </View>

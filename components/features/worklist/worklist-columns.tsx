@@ -56,6 +56,7 @@ export function worklistColumns({ t, format, now, writes, onClaim, onOpen }: Col
             <Button
               kind="quiet"
               size="small"
+              flush
               label={item.owner ? t('giveBack') : t('take')}
               accessibleLabel={t(item.owner ? 'giveBackWhom' : 'takeWhom', { name: item.name })}
               onPress={() => onClaim(item)}
@@ -70,7 +71,7 @@ export function worklistColumns({ t, format, now, writes, onClaim, onOpen }: Col
       header: t('column.next'),
       hideHeader: true,
       flex: 0,
-      minRem: 8,
+      minRem: 10,
       align: 'end',
       bareOnPhone: true,
       cell: (item) =>
