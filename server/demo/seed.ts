@@ -83,8 +83,9 @@ async function inviteEverybody(house: House, siteIds: Record<string, string>): P
 export async function seedDemo(house: House, say: (line: string) => void): Promise<void> {
   const Ids = z.record(z.string(), z.string());
   // The story begins in the past, so that it ends now. One day more than it is long: staff are there before the first person.
-  if ((await findDemoStep(house.transact.db, 'sites')) === null && (await readOffset(house.transact.db)) === 0) await setOffset(house.transact.db, -(storyDays + 1) * daySeconds);
-  await firstAdministrator(house.transact, administratorEmail, demoPassword);
+  if ((await findDemoStep(house.transact.db, 'sites')) === null && (await readOffset(house.transact.db)) === 0)
+    await setOffset(house.transact.db, -(storyDays + 1) * daySeconds);
+  await firstAdministrator(house.transact, administratorEmail, { name: 'Ada Thorne', password: demoPassword });
   const siteIds = await step(house, 'sites', Ids, () => {
     say('Demo: two sites, their protocols and staff');
     return makeSites(house);

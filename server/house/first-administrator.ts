@@ -10,13 +10,13 @@ import type { Transact } from '@/server/transact';
 const passwordBytes = 32;
 
 export async function firstAdministrator(transact: Transact, email: string, password?: string): Promise<string | null> {
-  const passwordHash = await hashSecret(password ?? randomBytes(passwordBytes).toString('base64url'));
+  const passwordHash = await hashSecret(given.password ?? randomBytes(passwordBytes).toString('base64url'));
   let made: string | null = null;
   const actor = { kind: 'system', job: 'house.first-administrator' } as const;
   await transact.note(actor, actor.job, null, async (tx) => {
     await lockName(tx.db, actor.job);
     if ((await countAccounts(tx.db)) > 0) return;
-    const name = email.split('@')[0] ?? email;
+    const name = given.name ?? email.split('@')[0] ?? email;
     const ids = { id: randomUUID(), credentialId: randomUUID() };
     const account = {
       role: 'administrator',
