@@ -141,7 +141,8 @@ export async function prescribe(story: Story, member: CastMember, person: Enroll
     schedule: {
       ...{ startsOn: await today(story), days: [1, 2, 3, 4, 5, 6, 7], hoursFrom: '00:00', hoursTo: '23:59' },
       sessionsTotal: wanted.sessionsTotal ?? (member.fate === 'finished' ? 15 : 30),
-      ...{ minGapHours: 20, maxPerDay: 1, maxPer7Days: 7, expiresOn: await today(story, 90), makeUpMissed: false },
+      // Daily at the same hour: the session of a week ago is still inside the seven days when the next one is due.
+      ...{ minGapHours: 20, maxPerDay: 1, maxPer7Days: 8, expiresOn: await today(story, 90), makeUpMissed: false },
     },
     assisted: member.assisted ?? false,
   };
