@@ -30,9 +30,10 @@ const examples = {
     const rows = (await ask(page, '/api/participants?limit=100'))?.items ?? [];
     return rows.sort((a, b) => b.marks.length + b.holds * 10 - a.marks.length - a.holds * 10)[0]?.id;
   },
-  sessionId: async (page, role) => {
+  sessionId: async (page, role, place) => {
     if (role === 'participant') return (await ask(page, '/api/diary'))?.items?.[0]?.sessionId;
-    return (await ask(page, '/api/worklist?limit=100'))?.items?.find((item) => item.sessionId)?.sessionId;
+    const person = place.split('/')[2];
+    return (await ask(page, `/api/participants/${person}/timeline?limit=100`))?.items?.find((one) => one.kind === 'session')?.sessionId;
   },
   itemId: async (page) => (await ask(page, '/api/worklist?limit=100'))?.items?.[0]?.id,
 };
@@ -43,7 +44,7 @@ function filled(address, role) {
   return async (page) => {
     let place = address;
     for (const name of names) {
-      const value = await examples[name]?.(page, role);
+      const value = await examples[name]?.(page, role, place);
       if (value === undefined) return undefined;
       place = place.replace(`[${name}]`, value);
     }

@@ -85,7 +85,7 @@ export async function seedDemo(house: House, say: (line: string) => void): Promi
   // The story begins in the past, so that it ends now. One day more than it is long: staff are there before the first person.
   if ((await findDemoStep(house.transact.db, 'sites')) === null && (await readOffset(house.transact.db)) === 0)
     await setOffset(house.transact.db, -(storyDays + 1) * daySeconds);
-  await firstAdministrator(house.transact, administratorEmail, { name: 'Ada Thorne', password: demoPassword });
+  await firstAdministrator(house.transact, administratorEmail, { name: 'Wren Calloway', password: demoPassword });
   const siteIds = await step(house, 'sites', Ids, () => {
     say('Demo: two sites, their protocols and staff');
     return makeSites(house);

@@ -9,7 +9,11 @@ import type { Transact } from '@/server/transact';
 
 const passwordBytes = 32;
 
-export async function firstAdministrator(transact: Transact, email: string, password?: string): Promise<string | null> {
+export async function firstAdministrator(
+  transact: Transact,
+  email: string,
+  given: { name?: string; password?: string } = {},
+): Promise<string | null> {
   const passwordHash = await hashSecret(given.password ?? randomBytes(passwordBytes).toString('base64url'));
   let made: string | null = null;
   const actor = { kind: 'system', job: 'house.first-administrator' } as const;

@@ -22,6 +22,11 @@ const kinds = ['write', 'read', 'refusal'] as const;
 type Kind = (typeof kinds)[number];
 const hashShown = 12;
 
+/** "participant.read-timeline" → "participant: read timeline"; the code is the trade's own word, written as one reads. */
+function actionOf({ action }: AuditEntry): string {
+  return action.replace('.', ': ').replaceAll('-', ' ');
+}
+
 export function AuditScreen() {
   const { t } = useTranslation('audit');
   const router = useRouter();
@@ -60,7 +65,7 @@ export function AuditScreen() {
             { id: 'at', header: t('at'), minRem: 9, flex: 0, isRowHeader: true, cell: (row) => format.dayTime(row.at) },
             { id: 'who', header: t('who'), cell: (row) => t('actor', { name: row.actor.name, role: t(`role.${row.actor.role}`) }) },
             { id: 'kind', header: t('kindLabel'), flex: 0, minRem: 6, cell: (row) => t(`kind.${row.kind}`) },
-            { id: 'action', header: t('action'), cell: (row) => row.action },
+            { id: 'action', header: t('action'), cell: (row) => actionOf(row) },
             { id: 'person', header: t('person'), flex: 0, minRem: 7, cell: (row) => row.participantCode ?? t('none') },
             { id: 'why', header: t('why'), cell: (row) => row.why ?? t('none') },
             { id: 'hash', header: t('hash'), flex: 0, minRem: 9, hideOnPhone: true, cell: (row) => <Text size="fine" digits tone="muted">{row.hash.slice(0, hashShown)}</Text> },
@@ -77,7 +82,7 @@ export function AuditScreen() {
               rows={[
                 { label: t('at'), value: format.dayTime(open.at) },
                 { label: t('who'), value: t('actor', { name: open.actor.name, role: t(`role.${open.actor.role}`) }) },
-                { label: t('action'), value: open.action },
+                { label: t('action'), value: actionOf(open) },
                 { label: t('subject'), value: open.subject ? `${open.subject.kind} ${open.subject.id}` : t('none') },
                 { label: t('before'), value: open.before ? JSON.stringify(open.before) : t('none') },
                 { label: t('after'), value: open.after ? JSON.stringify(open.after) : t('none') },

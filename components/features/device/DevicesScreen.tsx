@@ -23,8 +23,11 @@ import { DeviceStateDialog } from './DeviceStateDialog';
 type State = DeviceView['state'];
 const tones: Readonly<Record<State, StateTone>> = { stock: 'muted', out: 'steady', quarantined: 'stop', recalled: 'stop', lost: 'caution', retired: 'muted' };
 
+const formRem = 46;
+
 export function DevicesScreen() {
   const { t } = useTranslation('equipment');
+  const { rem } = useTheme();
   const router = useRouter();
   const me = useMe();
   const format = useFormat();
@@ -58,7 +61,7 @@ export function DevicesScreen() {
           columns={[
             { id: 'label', header: t('register.label'), isRowHeader: true, cell: (row) => <Text weight="bold">{row.label}</Text> },
             { id: 'serial', header: t('register.serial'), cell: (row) => row.serial },
-            { id: 'model', header: t('register.model'), hideOnPhone: true, cell: (row) => row.model },
+            { id: 'model', header: t('register.model'), hideOnPhone: true, flex: 2, cell: (row) => row.model },
             { id: 'firmware', header: t('register.firmware'), hideOnPhone: true, cell: (row) => row.firmware },
             { id: 'calibration', header: t('register.calibration'), cell: (row) => format.date(row.calibrationDueOn) },
             { id: 'state', header: t('register.state'), cell: (row) => <Tag tone={tones[row.state]} label={t(`register.states.${row.state}`)} /> },
@@ -76,7 +79,7 @@ export function DevicesScreen() {
       ) : null}
       {list.hasNextPage ? <Button kind="secondary" label={t('register.more')} busy={list.isFetchingNextPage} onPress={() => void list.fetchNextPage()} /> : null}
       {writes && me ? (
-        <View>
+        <View style={{ maxWidth: rem(formRem) }}>
           <AddDeviceForm sites={me.sites} />
         </View>
       ) : null}

@@ -59,7 +59,7 @@ export function Thread({ participantId }: { participantId?: string }) {
       {list.isPending ? <LoadingState /> : null}
       {list.isError ? <FailedState onRetry={() => void list.refetch()} /> : null}
       {list.hasNextPage ? <Button kind="quiet" label={t('older')} busy={list.isFetchingNextPage} onPress={() => void list.fetchNextPage()} /> : null}
-      {list.data && messages.length === 0 ? <EmptyState title={t('empty')}>{t('emptyHelp')}</EmptyState> : null}
+      {list.data && messages.length === 0 ? <EmptyState title={t('empty')}>{t(participantId ? 'emptyHelpStaff' : 'emptyHelp')}</EmptyState> : null}
       <View role="list" aria-label={t('title')} style={{ gap: space[3] }}>
         {messages.map((message) => (
           <Bubble key={message.id} message={message} />

@@ -8,7 +8,7 @@ import type { TimelineEntry } from '@/shared/contracts/participant';
 export function sentenceOfEntry(entry: TimelineEntry, format: Format, t: TFunction): string {
   const facts: Record<string, string> = {};
   for (const [name, value] of Object.entries(entry.facts)) {
-    if (typeof value === 'number') facts[name] = format.number(value);
+    if (typeof value === 'number') facts[name] = format.number(value, name.toLowerCase().includes('minutes') ? 0 : undefined);
     else if (typeof value === 'string') facts[name] = value;
   }
   if (facts.code) facts.what = t(`worklist:why.${facts.code}`);

@@ -31,10 +31,12 @@ export function SessionScreen() {
     { label: t('common:nav.participants'), href: '/participants' as const },
     { label: person.data?.name ?? '', href: { pathname: '/participants/[participantId]' as const, params: { participantId } } },
   ];
-  if (read.data) return <Page session={read.data} crumbs={crumbs} />;
+  // The address names both: a session under somebody else's name must never be shown.
+  const isTheirs = read.data?.participantId === participantId;
+  if (read.data && isTheirs) return <Page session={read.data} crumbs={crumbs} />;
   return (
     <StaffShell title={t('title')} place="participants" crumbs={crumbs}>
-      {read.isError ? <FailedState onRetry={() => void read.refetch()} /> : <LoadingState lines={8} />}
+      {read.isError || (read.data && !isTheirs) ? <FailedState onRetry={() => void read.refetch()} /> : <LoadingState lines={8} />}
     </StaffShell>
   );
 }

@@ -14,7 +14,7 @@ import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
 import { Table } from '@/components/ui/Table';
 import { Tag } from '@/components/ui/Tag';
 import { Text } from '@/components/ui/Text';
-import { space } from '@/components/ui/theme';
+import { space, useTheme } from '@/components/ui/theme';
 import { listSites, listStaff } from '@/shared/contracts/site';
 import type { AnswerOf } from '@/shared/contracts/contract';
 import { AddSiteForm } from './AddSiteForm';
@@ -24,8 +24,11 @@ import { SuspendDialog } from './SuspendDialog';
 export type StaffView = AnswerOf<typeof listStaff>['items'][number];
 const tones = { invited: 'muted', active: 'steady', suspended: 'stop' } as const;
 
+const formRem = 46;
+
 export function SiteScreen() {
   const { t } = useTranslation('site');
+  const { rem } = useTheme();
   const me = useMe();
   const sites = usePages(listSites, { query: {} });
   const all = sites.data?.pages.flatMap((page) => page.items) ?? [];
@@ -50,7 +53,7 @@ export function SiteScreen() {
       {sites.data && all.length === 0 ? <EmptyState title={t('empty')}>{t('emptyHelp')}</EmptyState> : null}
       {all.length > 0 ? <StaffTable names={new Map(all.map((site) => [site.id, site.name]))} mayChange={isAdministrator} myId={me?.account.id ?? ''} /> : null}
       {isAdministrator && sites.data ? (
-        <View style={{ gap: space[5] }}>
+        <View style={{ gap: space[5], maxWidth: rem(formRem) }}>
           {all.length > 0 ? <InviteStaffForm sites={all.map(({ id, name }) => ({ value: id, label: name }))} /> : null}
           <AddSiteForm />
         </View>
