@@ -104,6 +104,8 @@ export interface ReadInput<C extends ContractShape> {
   enabled?: boolean;
   /** Read again after so many milliseconds while the screen is shown. */
   everyMs?: number;
+  /** Ask again when the page opens, however new the kept answer is. */
+  isFresh?: boolean;
 }
 
 /** Reads one door and keeps the answer by its contract's name. */
@@ -113,6 +115,7 @@ export function useRead<C extends ContractShape>(contract: C, input: ReadInput<C
     queryFn: ({ signal }) => callDoor(contract, { params: input.params, query: input.query, signal }),
     enabled: input.enabled ?? true,
     ...(input.everyMs ? { refetchInterval: input.everyMs } : {}),
+    ...(input.isFresh ? { refetchOnMount: 'always' as const } : {}),
   });
 }
 

@@ -47,6 +47,12 @@ export function useMe(): Me | null {
   return state.state === 'signed_in' ? state.me : null;
 }
 
+/** The server's clock as it answered after this page opened; null until it has. A day kept from before midnight would be yesterday. */
+export function useNowOfServer(): string | null {
+  const read = useRead(readMe, { isFresh: true });
+  return read.isFetchedAfterMount ? (read.data?.now ?? null) : null;
+}
+
 /** Signs out here and forgets everything that was read; what is unsent stays on the phone. */
 export function useSignOut(): () => Promise<void> {
   const queries = useQueryClient();

@@ -86,12 +86,12 @@ it('gives twenty who ask at once with one key the same permit', async () => {
   expect(await clinic.rows({ id: z.string() }, given, [spare.patient.participantId])).toHaveLength(1);
 }, 60_000);
 
-it('takes one of two signatures on a draft, and counts it once', async () => {
+it('takes one of eight signatures on a draft that come at once', async () => {
   const [sample] = samples.signPrescription;
   const asked = await sample?.ask(world, 'clinician, own site');
   const browser = await world.as('clinician, own site');
-  const answers = await Promise.all(times(2, () => knockAt(browser, signPrescription, asked ?? {}, randomUUID())));
-  expect(outcomes(answers)).toEqual(['200', '409 prescription.already_signed']);
+  const answers = await Promise.all(times(8, () => knockAt(browser, signPrescription, asked ?? {}, randomUUID())));
+  expect(outcomes(answers)).toEqual(['200', ...times(7, () => '409 prescription.already_signed')]);
   const signatures = await world.clinic.rows({ id: z.string() }, 'select id from signature where subject_id = $1', [
     asked?.params?.prescriptionId,
   ]);
@@ -108,9 +108,9 @@ it('takes one of the signatures of two clinicians who sign at once', async () =>
   const asked = await samples.signPrescription[0]?.ask(world, 'clinician, own site');
   const browsers = [await world.as('clinician, own site'), await world.signIn(second.email)];
   const answers = await Promise.all(
-    browsers.map((browser) => knockAt(browser, signPrescription, asked ?? {}, randomUUID())),
+    times(8, (index) => knockAt(browsers[index % 2] ?? world.bare(), signPrescription, asked ?? {}, randomUUID())),
   );
-  expect(outcomes(answers)).toEqual(['200', '409 prescription.already_signed']);
+  expect(outcomes(answers)).toEqual(['200', ...times(7, () => '409 prescription.already_signed')]);
   const inForce = 'select id from prescription where id = $1 and version = 1 and closed_at is null';
   expect(await clinic.rows({ id: z.string() }, inForce, [asked?.params?.prescriptionId])).toHaveLength(1);
 });

@@ -93,6 +93,15 @@ export function MeaningColumn({ value, before, ageYears, limits }: MeaningColumn
   );
 }
 
+/** Which limits bind a bar: one signature, the site's own. */
+function layerText(row: DoseRow, format: ReturnType<typeof useFormat>, t: TFunction): string {
+  const withUnit = (amount: number) => `${format.number(amount)} ${row.unit}`;
+  const { routineLimit, siteLimit } = row;
+  if (routineLimit === undefined) return t('prescription:layer.site', { site: withUnit(siteLimit ?? row.ceiling ?? 0) });
+  if (siteLimit === undefined) return t('prescription:layer.routine', { routine: withUnit(routineLimit) });
+  return t('prescription:layer.both', { routine: withUnit(routineLimit), site: withUnit(siteLimit) });
+}
+
 /** "from 20 h with one signature, never under 4 h; own choice" */
 function limitText(row: DoseRow, format: ReturnType<typeof useFormat>, t: TFunction): string {
   const withUnit = (amount: number) => `${format.number(amount)} ${row.unit}`.trim();
@@ -117,7 +126,7 @@ function Bar({ row }: { row: DoseRow }) {
       ceiling={row.ceiling ?? 0}
       {...(row.siteLimit === undefined ? {} : { siteLimit: row.siteLimit })}
       {...(row.routineLimit === undefined ? {} : { routine: row.routineLimit })}
-      layerText={t(row.siteLimit === undefined ? 'layer.routine' : 'layer.both', { routine: withUnit(row.routineLimit ?? 0), site: withUnit(row.siteLimit ?? 0) })}
+      layerText={layerText(row, format, t)}
       sourceText={t('source', { ceiling: withUnit(row.ceiling ?? 0), source: barCeilings[row.quantity]?.source ?? row.source })}
       tone={tones[row.tier]}
     />

@@ -9,7 +9,6 @@ import { Form } from '@/components/forms/Form';
 import { FormTextAreaField } from '@/components/forms/fields';
 import { useContractForm } from '@/components/forms/use-contract-form';
 import { useSigned } from '@/components/forms/use-signed';
-import { useMe } from '@/components/runtime/me';
 import { Button } from '@/components/ui/Button';
 import { Notice } from '@/components/ui/Notice';
 import { space, useTheme } from '@/components/ui/theme';
@@ -30,6 +29,8 @@ export interface PrescriptionEditorProps {
   /** An unsigned draft to go on with. */
   draft: PrescriptionView | null;
   settings: ProtocolSettings;
+  /** The server's clock. */
+  now: string;
   onWritten(): void;
 }
 
@@ -64,12 +65,11 @@ function startFrom({ person, inForce, draft }: PrescriptionEditorProps, today: s
 }
 
 export function PrescriptionEditor(props: PrescriptionEditorProps) {
-  const { person, inForce, settings, onWritten } = props;
+  const { person, inForce, settings, now, onWritten } = props;
   const { t } = useTranslation('prescription');
   const { rem } = useTheme();
-  const me = useMe();
   const [key] = useState(() => crypto.randomUUID());
-  const today = localMoment(Date.parse(me?.now ?? ''), person.zone).date;
+  const today = localMoment(Date.parse(now), person.zone).date;
   const form = useContractForm(writePrescription.body, startFrom(props, today));
   const { failed, send } = useSigned(writePrescription, form, { input: (body) => ({ body, key: `${key}:${JSON.stringify(body).length}` }), onDone: onWritten });
   const value = form.watch();

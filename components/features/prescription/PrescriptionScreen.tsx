@@ -7,7 +7,7 @@ import { useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { RecordShell } from '@/components/features/participant/pictures/RecordShell';
 import { usePages, useRead } from '@/components/runtime/api';
-import { useMe } from '@/components/runtime/me';
+import { useMe, useNowOfServer } from '@/components/runtime/me';
 import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
 import { readParticipant, type ParticipantView } from '@/shared/contracts/participant';
 import { listPrescriptions, type PrescriptionView } from '@/shared/contracts/prescription';
@@ -23,6 +23,7 @@ export function PrescriptionScreen() {
   const { t } = useTranslation('prescription');
   const { participantId = '' } = useLocalSearchParams<{ participantId: string }>();
   const me = useMe();
+  const now = useNowOfServer();
   const person = useRead(readParticipant, { params: { participantId } });
   const versions = usePages(listPrescriptions, { params: { participantId }, query: {} });
   const siteId = person.data?.siteId;
@@ -34,9 +35,9 @@ export function PrescriptionScreen() {
   return (
     <RecordShell title={t(inForce ? 'amendTitle' : 'title')} participantId={participantId} name={person.data?.name ?? ''} maxRem={wideRem}>
       {failed ? <FailedState onRetry={() => void Promise.all([person.refetch(), versions.refetch(), protocols.refetch()])} /> : null}
-      {!failed && (!person.data || !versions.data || !settings) ? <LoadingState lines={10} /> : null}
-      {person.data && versions.data && settings ? (
-        <Content person={person.data} all={all} inForce={inForce} settings={settings} isClinician={me?.account.role === 'clinician'} accountName={me?.account.name ?? ''} />
+      {!failed && (!person.data || !versions.data || !settings || now === null) ? <LoadingState lines={10} /> : null}
+      {person.data && versions.data && settings && now !== null ? (
+        <Content person={person.data} all={all} inForce={inForce} settings={settings} now={now} isClinician={me?.account.role === 'clinician'} accountName={me?.account.name ?? ''} />
       ) : null}
     </RecordShell>
   );
@@ -47,11 +48,13 @@ interface ContentProps {
   all: readonly PrescriptionView[];
   inForce: PrescriptionView | null;
   settings: ProtocolSettings;
+  /** The server's clock. */
+  now: string;
   isClinician: boolean;
   accountName: string;
 }
 
-function Content({ person, all, inForce, settings, isClinician, accountName }: ContentProps) {
+function Content({ person, all, inForce, settings, now, isClinician, accountName }: ContentProps) {
   const { t } = useTranslation('prescription');
   const [editing, setEditing] = useState(false);
   const waiting = all.find((one) => one.status === 'draft' || one.status === 'awaiting_second_signature') ?? null;
@@ -59,7 +62,7 @@ function Content({ person, all, inForce, settings, isClinician, accountName }: C
   return (
     <>
       {waiting && !editing ? <SignPanel draft={waiting} before={inForce} mayEdit={isClinician} isClinician={isClinician} accountName={accountName} onEdit={() => setEditing(true)} /> : null}
-      {editor ? <PrescriptionEditor person={person} inForce={inForce} draft={waiting} settings={settings} onWritten={() => setEditing(false)} /> : null}
+      {editor ? <PrescriptionEditor person={person} inForce={inForce} draft={waiting} settings={settings} now={now} onWritten={() => setEditing(false)} /> : null}
       {!isClinician && all.length === 0 ? <EmptyState title={t('none')}>{t('noneHelp')}</EmptyState> : null}
       {all.length > 0 ? <VersionsCard versions={all} zone={person.zone} /> : null}
     </>
