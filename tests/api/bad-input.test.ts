@@ -192,7 +192,7 @@ describe('a body', () => {
       }
     }
     expect(new Set(tried).size).toBe(7);
-    expect(tried.length).toBeGreaterThan(50);
+    expect(tried.length).toBeGreaterThanOrEqual(45);
   }, 120_000);
 
   it.each(authDoors.map((door) => [door.path, door] as const))(

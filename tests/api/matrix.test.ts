@@ -35,6 +35,7 @@ const refusedByRule: Partial<Record<string, Partial<Record<Who, string>>>> = {
   },
   'issuePermit of person': { 'participant, withdrawn': '409 clearance.refused' },
   'acknowledgePrescription of person': { 'participant, withdrawn': '409 version.stale' },
+  'addPhoto of person': { 'participant, withdrawn': '409 photo.no_consent' },
   'inviteCaregiver of nothing': { 'participant, withdrawn': '409 participant.withdrawn' },
 };
 

@@ -15,7 +15,7 @@ import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
 import { Table } from '@/components/ui/Table';
 import { Tag } from '@/components/ui/Tag';
 import { Text } from '@/components/ui/Text';
-import type { StateTone } from '@/components/ui/theme';
+import { useTheme, type StateTone } from '@/components/ui/theme';
 import { deviceStates, listDevices, type DeviceView } from '@/shared/contracts/device';
 import { AddDeviceForm } from './AddDeviceForm';
 import { DeviceStateDialog } from './DeviceStateDialog';
