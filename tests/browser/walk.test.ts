@@ -478,7 +478,8 @@ tell(
   'a missed session nudges, tells the caregiver nothing medical, and the third in a row reaches the worklist',
   async () => {
     const missed = 'Something planned was not done';
-    // Mails wait for the morning: nobody is told of it at night.
+    // The window closes at ten. Mails wait for the morning: nobody is told of it at night.
+    await advanceTo(server.url, '22:30', zone);
     await advanceTo(server.url, '09:30', zone);
     await mailTo(server.url, address('juniper.slate'), missed);
     const told = await mailTo(server.url, address('rook.slate'), missed);

@@ -1,8 +1,9 @@
 /**
- * Signing in. In the demo it also offers the demo's accounts. It says the same for a wrong address and a wrong password.
+ * Signing in. In the demo it also offers the demo's accounts. It says the same for a wrong address and a wrong password. Mails lead
+ * here: who is signed in already goes straight on.
  */
 import { useQueryClient } from '@tanstack/react-query';
-import { useLocalSearchParams, useRouter, type Href } from 'expo-router';
+import { Redirect, useLocalSearchParams, useRouter, type Href } from 'expo-router';
 import { useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { View } from 'react-native';
@@ -11,6 +12,7 @@ import { Form } from '@/components/forms/Form';
 import { FormPasswordField, FormTextField } from '@/components/forms/fields';
 import { useContractForm } from '@/components/forms/use-contract-form';
 import { PublicShell } from '@/components/layout/PublicShell';
+import { useMe } from '@/components/runtime/me';
 import { signIn, type AuthOutcome } from '@/components/runtime/sign-in';
 import { Button } from '@/components/ui/Button';
 import { Link } from '@/components/ui/Link';
@@ -31,6 +33,7 @@ export function SignInScreen() {
   const { next } = useLocalSearchParams<{ next?: string }>();
   const router = useRouter();
   const queries = useQueryClient();
+  const me = useMe();
   const form = useContractForm(SignInBody, { email: '', password: '' });
   const [failed, setFailed] = useState<AuthOutcome | null>(null);
 
@@ -39,10 +42,11 @@ export function SignInScreen() {
     const outcome = await signIn(email, password);
     if (outcome.outcome === 'second_factor') return router.push(`/second-factor?next=${encodeURIComponent(String(safeNext(next)))}`);
     if (outcome.outcome !== 'done') return setFailed(outcome);
+    // What was read is read again, as who has come; the page then goes on by itself.
     await queries.resetQueries();
-    router.replace(safeNext(next));
   });
 
+  if (me) return <Redirect href={safeNext(next)} />;
   return (
     <PublicShell title={t('signIn.title')} lead={t('signIn.lead')}>
       <Form onSubmit={() => void send()} label={t('signIn.title')}>

@@ -3,7 +3,6 @@ import { fireEvent, render, screen, within } from '@testing-library/react';
 import { axe } from 'jest-axe';
 import { LimitBar } from '@/components/features/prescription/pictures/LimitBar';
 import { TrendChart } from '@/components/features/reporting/pictures/TrendChart';
-import { runsOf } from '@/components/features/reporting/pictures/trend-geometry';
 import { ContactMark } from '@/components/features/session/pictures/ContactMark';
 import { HeadMap } from '@/components/features/session/pictures/HeadMap';
 import { placeFromAbove, placeFromFront, positionNames } from '@/components/features/session/pictures/positions';
@@ -97,8 +96,13 @@ describe('a trend', () => {
   ];
 
   test('does not join what was recorded across what was not', () => {
-    const frame = { left: 0, width: 100, top: 0, height: 10, from: 10, until: 30, low: 0, high: 10 };
-    expect(runsOf(points, frame).map((run) => run.length)).toEqual([1, 1]);
+    const { container } = render(
+      <TrendChart label="Headache" times={times} rows={[{ id: 'h', label: 'Headache', unit: '0–10', range: [0, 10], points }]} />,
+    );
+    const lines = [...container.querySelectorAll('path')].map((path) => path.getAttribute('d') ?? '');
+    // Each recorded day is a stroke that begins by itself; a joined one would begin once. The dots are paths too.
+    expect(lines.filter((line) => line.split('M').length === 3)).toHaveLength(1);
+    expect(lines.some((line) => /L/.test(line) && !/A|a/.test(line) && line.split('M').length === 2)).toBe(false);
   });
 
   test('gives the same numbers as a table, and a gap as a gap', async () => {

@@ -4,22 +4,14 @@
  */
 import { useState } from 'react';
 import { View, type LayoutChangeEvent } from 'react-native';
-import Svg, { Circle, G, Line, Path, Text as SvgText } from 'react-native-svg';
 import { useTranslation } from 'react-i18next';
-import {
-  fittingLabels,
-  linePath,
-  runsOf,
-  xOf,
-  yOf,
-  type RowFrame,
-  type TrendPoint,
-} from '@/components/features/reporting/pictures/trend-geometry';
+import { TrendLine } from '@/components/features/reporting/pictures/TrendLine';
+import { fittingLabels, type TrendPoint } from '@/components/features/reporting/pictures/trend-geometry';
 import { Button } from '@/components/ui/Button';
 import { Table } from '@/components/ui/Table';
 import { Text } from '@/components/ui/Text';
 import { VisuallyHidden } from '@/components/ui/VisuallyHidden';
-import { fontFamily, space, stroke, useTheme, type StateTone } from '@/components/ui/theme';
+import { space, useTheme, type StateTone } from '@/components/ui/theme';
 
 export interface TrendRow {
   id: string;
@@ -72,146 +64,44 @@ function TrendTable({ rows, times, label }: TrendChartProps) {
 
 export function TrendChart(props: TrendChartProps) {
   const { label, rows, times } = props;
-  const { t, i18n } = useTranslation('common');
-  const { colour, rem, type } = useTheme();
+  const { t } = useTranslation('common');
+  const { colour, rem } = useTheme();
   const [width, setWidth] = useState(640);
   const [isTableShown, setTableShown] = useState(false);
-  const format = new Intl.NumberFormat(i18n.language, { maximumFractionDigits: 2 });
 
   if (times.length === 0) return <Text tone="muted">{t('trend.empty')}</Text>;
 
-  const small = type('fine');
-  const margin = { start: rem(8.5), end: rem(1.5), top: rem(0.75), axis: rem(2) };
-  const rowHeight = rem(5);
-  const rowGap = rem(1.25);
   const ats = times.map((time) => time.at);
-  const shared = {
-    left: margin.start,
-    width: Math.max(rem(6), width - margin.start - margin.end),
-    height: rowHeight,
-    from: Math.min(...ats),
-    until: Math.max(...ats),
-  };
-  const frames: RowFrame[] = rows.map((row, index) => ({
-    ...shared,
-    top: margin.top + index * (rowHeight + rowGap),
-    low: row.range[0],
-    high: row.range[1],
-  }));
-  const bottom = margin.top + rows.length * (rowHeight + rowGap) - rowGap;
-  const height = bottom + margin.axis;
-  const axis: RowFrame = { ...shared, top: margin.top, low: 0, high: 1 };
-  const shownTimes = fittingLabels(times, axis, rem(4));
-  const words = { fontFamily, fontSize: small.fontSize };
+  const span = { from: Math.min(...ats), until: Math.max(...ats) };
+  const inset = { start: rem(3.5), end: rem(1.5) };
+  const shownTimes = fittingLabels(times, { ...span, left: 0, width: Math.max(rem(6), width - inset.start - inset.end) }, rem(4));
 
   return (
     <View style={{ gap: space[3] }}>
       {/* Time runs from left to right in every language, as in the record. */}
-      <View
-        dir="ltr"
-        onLayout={(event: LayoutChangeEvent) => setWidth(event.nativeEvent.layout.width)}
-        style={{ height }}
-      >
-        <Svg role="img" aria-label={label} width="100%" height={height} viewBox={`0 0 ${width} ${height}`}>
-          {shownTimes.map((time) => (
-            <Line
-              key={time.at}
-              x1={xOf(time.at, axis)}
-              x2={xOf(time.at, axis)}
-              y1={margin.top}
-              y2={bottom}
-              stroke={colour.line}
-              strokeWidth={stroke.hair}
-              strokeDasharray="1 4"
-            />
-          ))}
-          {rows.map((row, index) => {
-            const frame = frames[index];
-            if (!frame) return null;
-            const ink = colour[row.tone ?? tones[index % tones.length] ?? 'action'];
-            const foot = frame.top + frame.height;
-            return (
-              <G key={row.id}>
-                <SvgText x={0} y={frame.top + small.fontSize} {...words} fontWeight="700" fill={colour.ink}>
-                  {row.label}
-                </SvgText>
-                <SvgText x={0} y={frame.top + small.fontSize + small.lineHeight} {...words} fill={colour.muted}>
+      <View dir="ltr" role="img" aria-label={label} onLayout={(event: LayoutChangeEvent) => setWidth(event.nativeEvent.layout.width)}>
+        <View aria-hidden style={{ gap: space[1] }}>
+          {rows.map((row, index) => (
+            <View key={row.id}>
+              <Text size="small" weight="bold">
+                {row.label}{' '}
+                <Text size="small" tone="muted">
                   {row.unit}
-                </SvgText>
-                <SvgText
-                  x={frame.left - space[2]}
-                  y={frame.top + small.fontSize * 0.35}
-                  {...words}
-                  textAnchor="end"
-                  fill={colour.muted}
-                >
-                  {format.format(frame.high)}
-                </SvgText>
-                <SvgText
-                  x={frame.left - space[2]}
-                  y={foot + small.fontSize * 0.35}
-                  {...words}
-                  textAnchor="end"
-                  fill={colour.muted}
-                >
-                  {format.format(frame.low)}
-                </SvgText>
-                <Line
-                  x1={frame.left}
-                  x2={frame.left + frame.width}
-                  y1={foot}
-                  y2={foot}
-                  stroke={colour.muted}
-                  strokeWidth={stroke.hair}
-                />
-                <Line
-                  x1={frame.left}
-                  x2={frame.left + frame.width}
-                  y1={frame.top}
-                  y2={frame.top}
-                  stroke={colour.line}
-                  strokeWidth={stroke.hair}
-                />
-                {runsOf(row.points, frame).map((run) => (
-                  <Path
-                    key={run[0]?.x}
-                    d={linePath(run)}
-                    fill="none"
-                    stroke={ink}
-                    strokeWidth={stroke.firm}
-                    strokeLinejoin="round"
-                    strokeLinecap="round"
-                  />
-                ))}
-                {row.points.map((point) =>
-                  point.value === null ? null : (
-                    <Circle
-                      key={point.at}
-                      cx={xOf(point.at, frame)}
-                      cy={yOf(point.value, frame)}
-                      r={3.5}
-                      fill={ink}
-                      stroke={colour.raised}
-                      strokeWidth={stroke.hair}
-                    />
-                  ),
-                )}
-              </G>
-            );
-          })}
-          {shownTimes.map((time) => (
-            <SvgText
-              key={time.at}
-              x={xOf(time.at, axis)}
-              y={bottom + small.lineHeight}
-              {...words}
-              textAnchor="middle"
-              fill={colour.muted}
-            >
-              {time.label}
-            </SvgText>
+                </Text>
+              </Text>
+              <TrendLine
+                points={row.points}
+                range={row.range}
+                span={span}
+                times={shownTimes}
+                isLast={index === rows.length - 1}
+                width={width}
+                inset={inset}
+                ink={colour[row.tone ?? tones[index % tones.length] ?? 'action']}
+              />
+            </View>
           ))}
-        </Svg>
+        </View>
       </View>
       <Button
         kind="quiet"
