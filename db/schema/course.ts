@@ -45,6 +45,10 @@ const msCeiling = sql.raw(String(Math.round(ceilings.minutes.value * 60_000)));
 const microcoulombCeiling = sql.raw(String(Math.round(ceilings.chargeCoulomb.value * 1_000_000)));
 const rampMsMin = sql.raw(String(Math.round(ceilings.leastRampSeconds.value * 1000)));
 const rampMsMax = sql.raw(String(Math.round(ceilings.mostRampSeconds.value * 1000)));
+const msADayCeiling = sql.raw(String(Math.round(ceilings.minutesPerDay.value * 60_000)));
+const gapMsMin = sql.raw(String(Math.round(ceilings.leastGapHours.value * 3_600_000)));
+// With the rules' relative tolerance: shares such as a third have no exact decimal.
+const densityCeiling = sql.raw(`${ceilings.densityMilliampPerSquareCentimetre.value} * 1.000000001`);
 
 export const prescription = pgTable(
   'prescription',
@@ -98,6 +102,13 @@ export const prescription = pgTable(
     check('prescription_charge_ceiling', sql`${table.chargeUc} > 0 and ${table.chargeUc} <= ${microcoulombCeiling}`),
     check('prescription_ramp_up_bounds', sql`${table.rampUpMs} between ${rampMsMin} and ${rampMsMax}`),
     check('prescription_ramp_down_bounds', sql`${table.rampDownMs} between ${rampMsMin} and ${rampMsMax}`),
+    check('prescription_day_ceiling', sql`${table.maxPerDay} >= 1 and ${table.maxPerDay}::bigint * ${table.onMs} <= ${msADayCeiling}`),
+    check('prescription_gap_floor', sql`${table.minGapMs} >= ${gapMsMin}`),
+    // The function stands in migration 0002: a CHECK cannot look into a list by itself. Nothing readable is no density, and refused.
+    check('prescription_density_ceiling', sql`coalesce(worst_density(${table.intensityUa}, ${table.electrodes}) <= ${densityCeiling}, false)`),
+    check('prescription_whole_time', sql`${table.onMs} = ${table.rampUpMs} + ${table.holdMs} + ${table.rampDownMs}`),
+    // µA times ms are nC, and a ramp counts half: the amount that limits are judged by cannot be less than the curve gives.
+    check('prescription_whole_charge', sql`${table.waveform} <> 'tDCS' or ${table.chargeUc} * 2000 >= ${table.intensityUa}::bigint * (2 * ${table.holdMs}::bigint + ${table.rampUpMs} + ${table.rampDownMs})`),
     check('prescription_hold', sql`${table.holdMs} >= 0`),
     check('prescription_sessions', sql`${table.sessionsTotal} between 1 and 200`),
     check('prescription_signed_has_version', sql`(${table.signedAt} is null) = (${table.version} is null)`),
