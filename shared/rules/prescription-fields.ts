@@ -53,7 +53,7 @@ function pathOf(row: DoseRow, dose: MontageFacts): string {
 }
 
 /** The limit that was crossed: the lower bound if the value is below it, else the site's or the ceiling. */
-function limitOf(row: DoseRow): number | undefined {
+export function limitOf(row: DoseRow): number | undefined {
   const { value, floor } = row;
   if (floor !== undefined && value !== undefined && value < floor) return floor;
   return row.siteLimit ?? row.ceiling;

@@ -18,6 +18,7 @@ export const reasonCodes = [
   'mood_check_due',
   'prescription_unsigned',
   'second_signature_missing',
+  'dose_above_limit',
   'prescription_paused',
   'prescription_expired',
   'prescription_unacknowledged',

@@ -10,6 +10,8 @@ import { pauseCourse } from '@/server/features/course/pause-course';
 import { issuePermit } from '@/server/features/permit/issue-permit';
 import { readPermit } from '@/server/features/permit/read-permit';
 import { readPermitKeys } from '@/server/features/permit/read-permit-keys';
+import { changeProtocol } from '@/server/features/protocol/change-protocol';
+import { listProtocols } from '@/server/features/protocol/list-protocols';
 import { makeTransact } from '@/server/transact';
 import { PermitClaims, type PermitView } from '@/shared/contracts/permit';
 import { openClinic, secretOfTests, type Clinic } from '../support/clinic';
@@ -301,4 +303,21 @@ it('leaves a planned session open after one that was not delivered', async () =>
     [permit.sessionId],
   );
   expect(planned?.closed_at).toBeNull();
+});
+
+it('asks the limits of today, not those of the day of the signature', async () => {
+  const strict = await clinic.site('TL');
+  const clinician = await clinic.staff('Nell Amis', 'clinician', strict);
+  const admin = await clinic.staff('Ada Admin', 'administrator', strict);
+  const ready = await readyPatient(clinic, clinician, strict);
+  const [{ settings } = { settings: null }] = (await clinic.call(admin, listProtocols, {})).items;
+  if (settings === null) throw new Error('no protocol');
+  const limits = { ...settings.limits, routineCurrentMilliamp: 1, mostCurrentMilliamp: 1.5 };
+  const body = { siteId: strict, basedOnVersion: 1, reason: 'Tighter', password: 'the password again' };
+  await clinic.call(admin, changeProtocol, { body: { ...body, settings: { ...settings, limits } } });
+  const { id } = await answer(clinic, ready.patient);
+  const refusal = await clinic.refused(ready.patient, issuePermit, { body: permitBody(ready, id), key: randomUUID() });
+  expect(refusal.reasons).toEqual([
+    expect.objectContaining({ code: 'dose_above_limit', subject: 'current', layer: 'site', value: 2, limit: 1.5 }),
+  ]);
 });

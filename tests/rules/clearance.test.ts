@@ -2,7 +2,7 @@
 
 import { clearance, earliestStart, passesByTime, plannedCounts } from '@/shared/rules/clearance';
 import { resolverOf } from '@/shared/rules/clearance/reason';
-import { reasonCodes } from '@/shared/values/codes';
+import { limitLayers, reasonCodes } from '@/shared/values/codes';
 import { cases, ended, often, past, sponge, yesterday, type Change } from '@/tests/support/clearance-cases';
 import { clearedAt, clearedFacts, withFacts } from '@/tests/support/clearance-facts';
 
@@ -27,13 +27,24 @@ describe('clearance', () => {
   });
 
   it.each(table)('refuses by name when the fact of %s is missing', (_code, { missing, fact }) => {
-    expect(ask(missing).reasons).toContainEqual({ code: 'unknown_fact', fact, resolvedBy: 'staff' });
+    const told = { code: 'unknown_fact', fact, resolvedBy: 'staff', source: 'own choice' };
+    expect(ask(missing).reasons).toContainEqual(told);
   });
 
   it.each(table)('says who resolves %s', (code, { fires }) => {
     const found = ask(fires).reasons.find((each) => each.code === code);
     // A hold until tomorrow passes by time; the table holds what a hold needs that has passed.
     expect(found?.resolvedBy).toBe(code === 'precheck_hold' ? 'time' : resolverOf[code]);
+  });
+
+  it.each(table)('tells the source of %s, and of a limit its layer and the value that met it', (code, { fires }) => {
+    const found = ask(fires).reasons.find((each) => each.code === code);
+    expect(found?.source).not.toBe('');
+    // What a limit stops says by how much and whose the limit is; a count of what was missed has none.
+    if (found?.limit !== undefined) {
+      expect(found.value).toEqual(expect.any(Number));
+      expect(limitLayers).toContain(found.layer);
+    }
   });
 
   it('lists reasons in the order of the codes, whatever found them', () => {
@@ -58,7 +69,7 @@ describe('clearance', () => {
 
   it('asks nothing more of a prescription that does not exist', () => {
     expect(ask({ prescription: { status: 'none', dose: undefined, hoursFrom: undefined } }).reasons).toEqual([
-      { code: 'prescription_unsigned', resolvedBy: 'clinician' },
+      { code: 'prescription_unsigned', resolvedBy: 'clinician', source: 'common practice' },
     ]);
     const without = { ...clearedFacts, prescription: { status: 'none' }, site: undefined } as const;
     expect(clearance(without, clearedAt).reasons.map(({ code }) => code)).toEqual(['prescription_unsigned']);
@@ -141,7 +152,10 @@ describe('clearance', () => {
       { ...sponge, kind: 'saline', uses: 99, maxUses: null },
     ];
     expect(ask({ supplies }).reasons).toEqual([
-      { code: 'supply_used_up', resolvedBy: 'coordinator', subject: 'sponge', value: 12, limit: 10 },
+      {
+        ...{ code: 'supply_used_up', resolvedBy: 'coordinator', subject: 'sponge' },
+        ...{ value: 12, limit: 10, layer: 'default', source: 'guidance R56' },
+      },
     ]);
   });
 
@@ -152,7 +166,7 @@ describe('clearance', () => {
 
   it('says that a clinician must look at a pre-check that ended in a review', () => {
     expect(ask({ precheck: { outcome: 'hold_review' } }).reasons).toEqual([
-      { code: 'precheck_hold', resolvedBy: 'clinician', subject: 'hold_review' },
+      { code: 'precheck_hold', resolvedBy: 'clinician', subject: 'hold_review', source: 'own choice' },
     ]);
   });
 

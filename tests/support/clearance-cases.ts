@@ -119,6 +119,12 @@ export const cases: Readonly<Record<Exclude<ReasonCode, 'unknown_fact'>, Cases>>
     missing: { prescription: { tier: undefined } },
     fact: 'prescription.tier',
   },
+  dose_above_limit: {
+    fires: { prescription: { overLimits: [{ quantity: 'current', value: 3, limit: 2, unit: 'mA', layer: 'site' }] } },
+    misses: { prescription: { overLimits: [] } },
+    missing: { prescription: { overLimits: [{ quantity: 'unknown_fact' }] } },
+    fact: 'prescription.dose',
+  },
   prescription_paused: {
     fires: { prescription: { isPaused: true } },
     misses: { prescription: { isPaused: false } },

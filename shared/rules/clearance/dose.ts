@@ -3,7 +3,7 @@
 import { isBelow } from '@/shared/values/units';
 import { isoOf } from '@/shared/values/zone';
 import type { LimitLayer, ReasonCode } from '@/shared/values/codes';
-import { ceilings } from '../ceilings';
+import { ceilings, type Ceiling } from '../ceilings';
 import { dayWindow, fitsUnder, weekWindow, type Counted } from '../rolling';
 import { allKnown, isPrescribed, type ClearanceContext } from './context';
 import { when, type Reason } from './reason';
@@ -62,9 +62,11 @@ export function minutesReasons(context: ClearanceContext): Reason[] {
 function chargeReasons(
   context: ClearanceContext,
   code: 'charge_24h' | 'charge_7d',
-  limit: number | undefined,
+  setLimit: number | undefined,
+  ceiling: Ceiling,
   window: number,
 ): Reason[] {
+  const isSite = setLimit !== undefined && isBelow(setLimit, ceiling.value);
   return rollingReason(context.now, {
     code,
     counted: allKnown(context.sessions, 'endedAt', 'chargeCoulomb')?.map(({ endedAt, chargeCoulomb }) => ({
@@ -72,11 +74,11 @@ function chargeReasons(
       amount: chargeCoulomb,
     })),
     planned: plannedDose(context).chargeCoulomb,
-    limit,
+    limit: setLimit === undefined ? undefined : Math.min(setLimit, ceiling.value),
     window,
     unit: 'C',
-    layer: 'site',
-    source: 'site protocol',
+    layer: isSite ? 'site' : 'ceiling',
+    source: isSite ? 'site protocol' : ceiling.source,
   });
 }
 
@@ -84,12 +86,12 @@ export function charge24hReasons(context: ClearanceContext): Reason[] {
   if (!isPrescribed(context)) return [];
   const site = context.known.some('site', context.facts.site);
   const limit = context.known.amount('site.max_24h_C', site?.maxCharge24hCoulomb);
-  return chargeReasons(context, 'charge_24h', limit, dayWindow);
+  return chargeReasons(context, 'charge_24h', limit, ceilings.charge24hCoulomb, dayWindow);
 }
 
 export function charge7dReasons(context: ClearanceContext): Reason[] {
   if (!isPrescribed(context)) return [];
   const site = context.known.some('site', context.facts.site);
   const limit = context.known.amount('site.max_7d_C', site?.maxCharge7dCoulomb);
-  return chargeReasons(context, 'charge_7d', limit, weekWindow);
+  return chargeReasons(context, 'charge_7d', limit, ceilings.charge7dCoulomb, weekWindow);
 }

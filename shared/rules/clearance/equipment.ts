@@ -28,7 +28,7 @@ export function deviceReasons({ facts, known }: ClearanceContext): Reason[] {
   const isLow = value !== undefined && value < leastBatteryPercent;
   return [
     ...when(isRecalled === true, 'device_recalled'),
-    ...when(isLow, 'battery_low', { value, limit: leastBatteryPercent, unit: '%' }),
+    ...when(isLow, 'battery_low', { value, limit: leastBatteryPercent, unit: '%', layer: 'default' }),
   ];
 }
 
@@ -45,10 +45,11 @@ export function supplyReasons({ facts, known, now }: ClearanceContext): Reason[]
     const openedAt = known.instant(`${name}.opened_at`, supply.openedAt);
     const days = known.amount(`${name}.max_days`, supply.maxDays);
     if (value !== undefined && most !== undefined && value >= most) {
-      usedUp.push(reason('supply_used_up', { subject, value, limit: most }));
+      usedUp.push(reason('supply_used_up', { subject, value, limit: most, layer: 'default' }));
     }
     if (openedAt !== undefined && days !== undefined && openedAt + days * dayMilliseconds <= now) {
-      expired.push(reason('supply_expired', { subject, limit: days, unit: 'd' }));
+      const value = (now - openedAt) / dayMilliseconds;
+      expired.push(reason('supply_expired', { subject, value, limit: days, unit: 'd', layer: 'default' }));
     }
   }
   return [...usedUp.slice(0, 1), ...expired.slice(0, 1)];

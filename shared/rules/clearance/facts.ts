@@ -1,7 +1,14 @@
 // Everything that the server must know to say whether a session may start. Each fact may be undefined: then it is
 // unknown and clearance refuses with its name. Instants are ISO 8601 in UTC, zones IANA names. No rules here.
 
-import type { PrecheckOutcome, SessionFactState, StoredLockoutCode, Tier } from '@/shared/values/codes';
+import type {
+  DoseQuantity,
+  LimitLayer,
+  PrecheckOutcome,
+  SessionFactState,
+  StoredLockoutCode,
+  Tier,
+} from '@/shared/values/codes';
 
 export type AccountFacts = { readonly isActive?: boolean };
 export type ParticipantFacts = {
@@ -37,6 +44,15 @@ export type MoodCheckFacts = {
   /** null = the protocol asks none. */
   readonly dueAt?: string | null;
 };
+/** A row of the signed dose that the limits in force now refuse. */
+export type OverLimitFacts = {
+  readonly quantity: DoseQuantity;
+  readonly value?: number;
+  readonly limit?: number;
+  readonly unit?: string;
+  readonly layer?: LimitLayer;
+  readonly source?: string;
+};
 export type PrescriptionFacts = {
   /** `none`: there is no prescription yet, and nothing else here is asked for. */
   readonly status?: 'none' | 'draft' | 'signed';
@@ -45,7 +61,10 @@ export type PrescriptionFacts = {
   readonly acknowledgedVersion?: number;
   readonly isPaused?: boolean;
   readonly expiresAt?: string;
+  /** The worse of the tier at signing and the tier by the limits in force now. */
   readonly tier?: Tier;
+  /** By the limits in force now, `unknown_fact` where the dose cannot be read. Absent: judged by its tier alone. */
+  readonly overLimits?: readonly OverLimitFacts[];
   readonly hasSecondSignature?: boolean;
   readonly sessionsTotal?: number;
   readonly sessionsDone?: number;

@@ -1,22 +1,22 @@
 // From what stands on record to the facts that clearance asks for. What is not on record stays undefined, so that the
 // rule refuses by its name; "nothing was recorded" is a known fact. No limits and no reasons here.
 
-import { precheckOutcomes, type Tier } from '@/shared/values/codes';
+import { precheckOutcomes } from '@/shared/values/codes';
 import type { ProtocolSettings } from '@/shared/values/protocol-settings';
 import { coulombOf, hourMilliseconds, minuteMilliseconds } from '@/shared/values/units';
+import { localDate, parseInstant } from '@/shared/values/zone';
+import { ageYearsOn } from '../age';
 import { rollingLimitsOf } from '../site-limits';
+import { doseNow, type RecordedDose } from './dose-now';
 import type { ClearanceFacts, ConsentFacts, OpenLockoutFacts, PastSessionFacts, PrescriptionFacts } from './facts';
 
-type RecordedPrescription = {
+type RecordedPrescription = RecordedDose & {
   readonly version: number | null;
   readonly signedAt: string | null;
   readonly closedAt: string | null;
   readonly expiresAt: string;
-  readonly tier: Tier;
   readonly sessionsTotal: number;
-  readonly maxPerDay: number;
   readonly maxPer7Days: number;
-  readonly minGapMs: number;
   readonly hoursFrom: string;
   readonly hoursTo: string;
   readonly assisted: boolean;
@@ -97,7 +97,13 @@ function consentOf({ person, protocol }: Gathered): ConsentFacts {
   };
 }
 
-function prescriptionOf({ person }: Gathered): PrescriptionFacts {
+/** Full years today, where the person is. */
+function ageOf({ person: { participant } }: Gathered, now: string): number | undefined {
+  return ageYearsOn(participant.bornOn, localDate(parseInstant(now) ?? Number.NaN, participant.zone));
+}
+
+function prescriptionOf(gathered: Gathered, now: string): PrescriptionFacts {
+  const { person, protocol } = gathered;
   const { prescription, course } = person;
   const isOver = course !== null && course.closedAt !== null;
   // Discarded, or superseded without a successor in force: as good as none.
@@ -110,7 +116,7 @@ function prescriptionOf({ person }: Gathered): PrescriptionFacts {
     acknowledgedVersion: person.acknowledgedVersion,
     isPaused: person.pauseId !== null,
     expiresAt: prescription.expiresAt,
-    tier: prescription.tier,
+    ...doseNow(prescription, ageOf(gathered, now), protocol?.settings.limits),
     hasSecondSignature: person.hasSecondSignature,
     sessionsTotal: prescription.sessionsTotal,
     // A course that is over has nothing left, however many of its sessions were missed.
@@ -166,7 +172,7 @@ function precheckOf({ person: { precheck, participant } }: Gathered): ClearanceF
 export function gatherFacts(gathered: Gathered, now: string, batteryPercent?: number): ClearanceFacts {
   const { person, protocol } = gathered;
   const { participant, screening, training } = person;
-  const prescription = prescriptionOf(gathered);
+  const prescription = prescriptionOf(gathered, now);
   return {
     account: { isActive: participant.closedAt === null && person.accountState === 'active' },
     asker: participant.id,

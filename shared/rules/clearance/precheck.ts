@@ -55,12 +55,13 @@ export function precheckReasons(context: ClearanceContext): Reason[] {
   if (precheck === undefined) return [reason('precheck_missing'), ...helperReasons(context)];
   const answeredAt = known.instant('precheck.answered_at', precheck.answeredAt);
   const by = known.text('precheck.by', precheck.answeredBy);
-  const isOver = answeredAt !== undefined && answeredAt + precheckLifeMinutes * minuteMilliseconds <= now;
+  const value = answeredAt === undefined ? undefined : (now - answeredAt) / minuteMilliseconds;
+  const isOver = value !== undefined && value >= precheckLifeMinutes;
   const isOther =
     by !== undefined &&
     ((asker !== undefined && by !== asker) || (participantId !== undefined && by !== participantId));
   return [
-    ...when(isOver, 'precheck_expired', { limit: precheckLifeMinutes, unit: 'min' }),
+    ...when(isOver, 'precheck_expired', { value, limit: precheckLifeMinutes, unit: 'min', layer: 'default' }),
     ...when(isOther, 'precheck_other_person'),
     ...holdReason(context, answeredAt),
     ...helperReasons(context),

@@ -2,8 +2,19 @@
 
 import { lockoutLevels } from '@/shared/values/codes';
 import { isoOf } from '@/shared/values/zone';
+import type { Known } from '../known';
 import { isPrescribed, type ClearanceContext } from './context';
+import type { OverLimitFacts } from './facts';
 import { reason, when, type Reason } from './reason';
+
+/** A signature made a dose lawful by the limits of its day; a start asks those of today (safety rules §2). */
+function overLimitReasons(rows: readonly OverLimitFacts[], known: Known): Reason[] {
+  return rows.flatMap(({ quantity, ...row }) => {
+    if (quantity !== 'unknown_fact') return [reason('dose_above_limit', { subject: quantity, ...row })];
+    known.some('prescription.dose', undefined);
+    return [];
+  });
+}
 
 export function prescriptionReasons({ facts, known, now }: ClearanceContext): Reason[] {
   const prescription = known.some('prescription', facts.prescription);
@@ -20,6 +31,7 @@ export function prescriptionReasons({ facts, known, now }: ClearanceContext): Re
   return [
     ...when(status === 'draft', 'prescription_unsigned'),
     ...when(tier === 'second_signature' && hasSecond === false, 'second_signature_missing'),
+    ...overLimitReasons(prescription?.overLimits ?? [], known),
     ...when(isPaused === true, 'prescription_paused'),
     ...when(expiresAt !== undefined && expiresAt <= now, 'prescription_expired'),
     ...when(isBehind, 'prescription_unacknowledged'),
