@@ -51,6 +51,7 @@ function computedOf(facts: DoseFacts | undefined, dose: ReadDose): ComputedDose 
       amplitude !== undefined && frequencyHertz !== undefined && frequencyHertz > 0
         ? halfCycleCharge(amplitude, frequencyHertz) * 1_000_000
         : undefined,
+    phaseDegrees: dose.phaseDegrees,
   };
 }
 

@@ -311,3 +311,61 @@ describe('ageYearsOn', () => {
     expect(ageYearsOn('2026-05-13', '2026-05-12')).toBeUndefined();
   });
 });
+
+describe('the waveforms', () => {
+  const sine: DoseFacts = { ...dose, waveform: 'tACS', frequencyHertz: 10 };
+  const noise: DoseFacts = { ...dose, waveform: 'tRNS', bandHertz: [100, 640] };
+
+  it.each([
+    ['peak', 1, [1, 2, Math.SQRT1_2]],
+    ['peak_to_peak', 2, [1, 2, Math.SQRT1_2]],
+    ['rms', Math.SQRT1_2, [1, 2, Math.SQRT1_2]],
+  ] as const)('shows a sine entered as %s in all three ways', (meaning, valueMilliamp, wanted) => {
+    const { computed } = judgeDose({ ...sine, amplitude: { valueMilliamp, meaning } }, 42);
+    const shown = [computed.peakMilliamp, computed.peakToPeakMilliamp, computed.rmsMilliamp];
+    shown.forEach((value, index) => expect(value).toBeCloseTo(wanted[index] ?? Number.NaN, 12));
+  });
+
+  it('shows noise by its r.m.s. and the peak at which it clips, and refuses one without the other', () => {
+    const { computed } = judgeDose(
+      { ...noise, amplitude: { valueMilliamp: 0.5, meaning: 'rms', peakMilliamp: 2 } },
+      42,
+    );
+    expect(computed).toMatchObject({ peakMilliamp: 2, peakToPeakMilliamp: 4, rmsMilliamp: 0.5 });
+    const alone = judgeDose({ ...noise, amplitude: { valueMilliamp: 0.5, meaning: 'rms' } }, 42);
+    expect(alone.rows.flatMap(({ fact }) => fact ?? [])).toEqual(['dose.amplitude.peak_mA']);
+  });
+
+  it.each([
+    [undefined, 0],
+    [90, 90],
+    [-90, 270],
+    [360, 0],
+    [-360, 0],
+  ])('reads the phase %p of a sine as %p degrees', (phaseDegrees, wanted) => {
+    const { computed, verdict } = judgeDose({ ...sine, phaseDegrees }, 42);
+    expect([computed.phaseDegrees, verdict]).toEqual([wanted, 'accept']);
+  });
+
+  it('refuses a phase that cannot be meant by name, and asks none of a direct current or of noise', () => {
+    const factsOf = (changes: DoseFacts) => judgeDose(changes, 42).rows.flatMap(({ fact }) => fact ?? []);
+    expect(factsOf({ ...sine, phaseDegrees: 361 })).toEqual(['dose.phase_deg']);
+    expect(factsOf({ ...sine, phaseDegrees: Number.NaN })).toEqual(['dose.phase_deg']);
+    expect(factsOf({ ...dose, phaseDegrees: Number.NaN })).toEqual([]);
+    expect(judgeDose({ ...noise, phaseDegrees: 90 }, 42).computed.phaseDegrees).toBeUndefined();
+  });
+
+  it('judges each return of one centre by its own share and its own area', () => {
+    const centre = pad('Cz', 'anode', 35);
+    const returns = [0.5, 0.3, 0.2].map((share, index) => ({
+      ...pad(`R${index}`, 'cathode', index === 0 ? 5 : 10),
+      share,
+    }));
+    const { rows, computed } = judgeDose({ ...dose, electrodes: [centre, ...returns] }, 42);
+    // 2 mA × 0.5 on 5 cm² is 0.2 mA/cm²; the centre has 2 mA on 35 cm².
+    expect(computed.maxDensityMilliampPerSquareCentimetre).toBeCloseTo(0.2, 12);
+    expect(rows.find(({ quantity }) => quantity === 'density')).toMatchObject({
+      ...{ tier: 'refuse', layer: 'ceiling', electrode: 'R0', ceiling: 0.16 },
+    });
+  });
+});

@@ -40,6 +40,8 @@ export type DoseFacts = {
   readonly rampUpSeconds?: number;
   readonly rampDownSeconds?: number;
   readonly frequencyHertz?: number;
+  /** tACS: of the sine at its start, −360 to 360; 0 if absent. One generator has one phase, so no limit hangs on it. */
+  readonly phaseDegrees?: number;
   readonly bandHertz?: readonly [number, number];
   readonly sessionsPerDay?: number;
   readonly minGapHours?: number;
@@ -78,6 +80,8 @@ export type ComputedDose = {
   readonly chargeCoulomb?: number;
   readonly maxDensityMilliampPerSquareCentimetre?: number;
   readonly halfCycleChargeMicrocoulomb?: number;
+  /** tACS: from 0 up to, not with, 360. */
+  readonly phaseDegrees?: number;
 };
 
 export type DoseJudgement = {

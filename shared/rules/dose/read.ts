@@ -32,6 +32,8 @@ export type ReadDose = {
   readonly minutes?: number;
   readonly chargeCoulomb?: number;
   readonly frequencyHertz?: number;
+  /** From 0 up to, not with, 360. */
+  readonly phaseDegrees?: number;
   readonly bandHertz?: readonly [number, number];
   readonly sessionsPerDay?: number;
   readonly minGapHours?: number;
@@ -79,6 +81,14 @@ function netMilliamp(dose: DoseFacts, waveform: Waveform | undefined): number | 
   return waveform === 'tDCS' ? peakOf(dose) : Math.abs(dose.offsetMilliamp ?? 0);
 }
 
+const fullTurnDegrees = 360;
+
+function readPhase(known: Known, phaseDegrees = 0): number | undefined {
+  const isMeant = Number.isFinite(phaseDegrees) && Math.abs(phaseDegrees) <= fullTurnDegrees;
+  const phase = known.some('dose.phase_deg', isMeant ? phaseDegrees : undefined);
+  return phase === undefined ? undefined : (phase + fullTurnDegrees) % fullTurnDegrees;
+}
+
 export function readDose(facts: DoseFacts | undefined, age: number | undefined): ReadDose {
   const known = new Known();
   const dose = known.some('dose', facts);
@@ -92,6 +102,7 @@ export function readDose(facts: DoseFacts | undefined, age: number | undefined):
   const rampUpSeconds = known.amount('dose.ramp_up_s', dose.rampUpSeconds);
   const rampDownSeconds = known.amount('dose.ramp_down_s', dose.rampDownSeconds);
   const frequencyHertz = waveform === 'tACS' ? known.amount('dose.frequency_Hz', dose.frequencyHertz) : undefined;
+  const phaseDegrees = waveform === 'tACS' ? readPhase(known, dose.phaseDegrees) : undefined;
   const bandIsKnown = dose.bandHertz?.length === 2 && dose.bandHertz.every(Number.isFinite);
   const bandHertz =
     waveform === 'tRNS' ? known.some('dose.band_Hz', bandIsKnown ? dose.bandHertz : undefined) : undefined;
@@ -111,6 +122,7 @@ export function readDose(facts: DoseFacts | undefined, age: number | undefined):
         ? chargeOf({ intensityMilliamp, rampUpSeconds, holdSeconds, rampDownSeconds })
         : undefined,
     frequencyHertz,
+    phaseDegrees,
     bandHertz,
     sessionsPerDay: positive(known, 'dose.sessions_per_day', dose.sessionsPerDay),
     minGapHours: known.amount('dose.min_gap_h', dose.minGapHours),
