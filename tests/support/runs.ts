@@ -5,8 +5,9 @@
 const tries = {
   T6: { small: 300, full: 100_000 },
   T7: { small: 200, full: 2_000 },
-  F16: { small: 40, full: 12_000 },
+  F16: { small: 400, full: 105_192 },
   F17: { small: 300, full: 10_000 },
+  S16: { small: 100, full: 1_000 },
   F23: { small: 200, full: 10_000 },
 } as const;
 export type TriedGoal = keyof typeof tries;
