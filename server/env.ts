@@ -16,6 +16,8 @@ export interface Env {
   role: 'all' | 'web' | 'worker';
   /** Signs cookies, seals the signing key: whoever has it can be anybody. */
   secret: string;
+  /** Folder that this server may write to: its secret, the audit trail's anchors. */
+  dataFolder: string;
   /** Null: the demo's own catcher; without the demo, mails wait in the outbox. */
   smtpUrl: string | null;
   mailFrom: string;
@@ -111,6 +113,7 @@ export function readEnv(source: Source = process.env): Env {
     fillsDemo: v.DEMO && v.DEMO_SEED,
     role: v.ROLE,
     secret: v.SECRET ?? keptSecret(path.resolve(v.RAMPWELL_DATA)),
+    dataFolder: path.resolve(v.RAMPWELL_DATA),
     smtpUrl: v.SMTP_URL ?? null,
     mailFrom: v.MAIL_FROM,
     baseUrl: v.BASE_URL ? new URL(v.BASE_URL).origin : `http://${host}:${v.PORT}`,

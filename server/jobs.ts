@@ -10,10 +10,11 @@ import { escalatePages } from '@/server/features/lockout/escalate-pages';
 import { expirePermits } from '@/server/features/permit/expire-permits';
 import { markMissed } from '@/server/features/session/mark-missed';
 import { remind } from '@/server/features/session/remind';
+import { anchorAudit } from '@/server/house/anchor-audit';
 import { forgetKeys } from '@/server/house/forget-keys';
 
 /** In the order in which they matter when much is due at once. */
-export const jobs: readonly Job[] = [escalatePages, endHolds, expirePermits, markMissed, remind, forgetKeys];
+export const jobs: readonly Job[] = [escalatePages, endHolds, expirePermits, markMissed, remind, forgetKeys, anchorAudit];
 
 export interface Runner {
   /** Runs everything that is due now, mails too, until nothing is. Returns how much was done. */

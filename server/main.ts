@@ -9,6 +9,7 @@ import { seedDemo } from '@/server/demo/seed';
 import { EnvError, readEnv, type Env } from '@/server/env';
 import { ensureSigningKey } from '@/server/features/permit/signing-key';
 import { firstAdministrator } from '@/server/house/first-administrator';
+import { anchorKeeper } from '@/server/house/keep-anchors';
 import { connectHouse, openHouse, transportOf, type House } from '@/server/house/open-house';
 import { makeLog } from '@/server/http/log';
 import { openQueue, type Queue } from '@/server/queue';
@@ -86,7 +87,8 @@ async function start(env: Env): Promise<Running> {
   if (env.role !== 'web') {
     await beat(client.db, processName());
     await forgetBeats(client.db, daySeconds);
-    await queue.work(() => runJobs(house));
+    const keepAnchors = anchorKeeper(client.db, env.dataFolder);
+    await queue.work(() => runJobs(house, keepAnchors));
   }
   house.open();
   return { house, server, queue, catcher };
@@ -96,8 +98,10 @@ function processName(): string {
   return `jobs:${process.pid}`;
 }
 
-async function runJobs({ client, runner }: House): Promise<void> {
+async function runJobs({ client, runner, log }: House, keepAnchors: () => Promise<void>): Promise<void> {
   await runner.runDue();
+  // A full disk must not stop the jobs; the file gets what it lacks at the next run.
+  await keepAnchors().catch((error: unknown) => log.error({ err: error }, 'audit anchors'));
   await beat(client.db, processName());
 }
 

@@ -1,9 +1,9 @@
 // The audit trail: chains of entries, each with the hash of the one before. Adds and reads; nothing here changes or removes an entry.
 
 import { createHash } from 'node:crypto';
-import { and, desc, eq, inArray, isNull, sql, type SQL } from 'drizzle-orm';
+import { and, desc, eq, gt, inArray, isNull, sql, type SQL } from 'drizzle-orm';
 import type { Db } from '@/db/client';
-import { auditEntry } from '@/db/schema/house';
+import { auditEntry, auditHead } from '@/db/schema/house';
 import { participant } from '@/db/schema/participant';
 import { canonicalJson, type Canonical } from '@/shared/values/canonical';
 
@@ -178,6 +178,61 @@ export async function listAudit(
     .leftJoin(participant, eq(participant.id, auditEntry.participantId))
     .where(and(...conditions))
     .orderBy(desc(auditEntry.at), desc(auditEntry.chain), desc(auditEntry.sequence))
+    .limit(limit);
+}
+
+/** Every entry, chain after chain, each from its beginning: a page after the given place, for checking them all. */
+export async function pageOfTrail(
+  db: Db,
+  after: { chain: string; sequence: number } | null,
+  limit: number,
+): Promise<Omit<AuditRow, 'participantCode'>[]> {
+  const { participantCode: _code, ...columns } = rowColumns;
+  return db
+    .select(columns)
+    .from(auditEntry)
+    .where(
+      after
+        ? sql`(${auditEntry.chain}, ${auditEntry.sequence}) > (${after.chain}, ${after.sequence}::bigint)`
+        : undefined,
+    )
+    .orderBy(auditEntry.chain, auditEntry.sequence)
+    .limit(limit);
+}
+
+/** Where in its chain an entry with this hash stands; null where none does. */
+export async function findSequenceOfHash(db: Db, chain: string, hash: string): Promise<number | null> {
+  const [row] = await db
+    .select({ sequence: auditEntry.sequence })
+    .from(auditEntry)
+    .where(and(eq(auditEntry.chain, chain), eq(auditEntry.hash, hash)))
+    .limit(1);
+  return row?.sequence ?? null;
+}
+
+/** The hashes at several places of chains, by `chain sequence`; a place without an entry is left out. */
+export async function hashesAt(
+  db: Db,
+  places: readonly { chain: string; sequence: number }[],
+): Promise<ReadonlyMap<string, string>> {
+  const { rows } = await db.execute<{ place: string; hash: string }>(sql`
+    select e.chain || ' ' || e.sequence as place, e.hash
+    from jsonb_to_recordset(${JSON.stringify(places)}::jsonb) as p(chain text, sequence bigint)
+    join ${auditEntry} e on e.chain = p.chain and e.sequence = p.sequence`);
+  return new Map(rows.map(({ place, hash }) => [place, hash]));
+}
+
+/** Heads, by name of the chain, a page after the given name. */
+export async function pageOfHeads(
+  db: Db,
+  afterChain: string | null,
+  limit: number,
+): Promise<{ chain: string; sequence: number; hash: string }[]> {
+  return db
+    .select({ chain: auditHead.chain, sequence: auditHead.sequence, hash: auditHead.hash })
+    .from(auditHead)
+    .where(afterChain === null ? undefined : gt(auditHead.chain, afterChain))
+    .orderBy(auditHead.chain)
     .limit(limit);
 }
 

@@ -1,7 +1,7 @@
 // The house's own tables: audit chains, outbox, keys seen, signing keys, the demo clock, heartbeats.
 
 import { sql } from 'drizzle-orm';
-import { bigint, boolean, index, integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core';
+import { bigint, boolean, date, index, integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core';
 import { closing, id, instant } from './columns';
 
 /** Head of each chain: `participant:<id>` or `site:<id>` or `house`. Locked last of all. */
@@ -40,6 +40,35 @@ export const auditEntry = pgTable(
     index('audit_entry_site').on(table.siteId, table.at.desc()),
     index('audit_entry_participant').on(table.participantId, table.at.desc()),
   ],
+);
+
+/**
+ * Once a day all heads that moved are signed together. Each anchor carries the hash of the one before, so that whoever kept any line of
+ * the file outside the database can see a tail that was cut.
+ */
+export const auditAnchor = pgTable('audit_anchor', {
+  number: integer('number').primaryKey(),
+  at: instant('at').notNull(),
+  /** One a day, in UTC. */
+  day: date('day', { mode: 'string' }).notNull().unique(),
+  previousHash: text('previous_hash').notNull(),
+  hash: text('hash').notNull(),
+  kid: text('kid').notNull(),
+  /** Compact JWS over number, instant and hash. */
+  token: text('token').notNull(),
+});
+
+export const auditAnchorHead = pgTable(
+  'audit_anchor_head',
+  {
+    chain: text('chain').notNull(),
+    sequence: bigint('sequence', { mode: 'number' }).notNull(),
+    hash: text('hash').notNull(),
+    anchor: integer('anchor')
+      .notNull()
+      .references(() => auditAnchor.number),
+  },
+  (table) => [primaryKey({ columns: [table.chain, table.sequence] }), index('audit_anchor_head_anchor').on(table.anchor)],
 );
 
 /** The record of every mail and page to be sent; the queue only wakes the sender. */

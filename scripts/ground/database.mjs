@@ -32,3 +32,13 @@ export async function openDatabase({ reset, say }) {
   }
   return cluster.databaseUrl;
 }
+
+/** The same database for a look at it: beside a server that runs on it, or with the cluster started for the while. */
+export async function reachDatabase(say) {
+  const given = process.env.DATABASE_URL;
+  if (given) return given;
+  const isInUse = claim('running.pid') !== undefined;
+  const cluster = await startLastingCluster(await postgresFolder(say), { say });
+  if (!isInUse) beforeEnd(cluster.stop);
+  return cluster.databaseUrl;
+}

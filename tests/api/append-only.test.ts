@@ -18,7 +18,7 @@ const changeable: Record<string, string[]> = {
     [
       ...['protocol', 'screening', 'training', 'watched_session', 'message', 'caregiver_share', 'caregiver_code'],
       ...['device_state', 'signature', 'acknowledgement', 'precheck', 'session_event', 'diary', 'photo'],
-      ...['worklist_claim', 'review', 'audit_entry'],
+      ...['worklist_claim', 'review', 'audit_entry', 'audit_anchor', 'audit_anchor_head'],
     ].map((table) => [table, []]),
   ),
   ...Object.fromEntries(

@@ -16,5 +16,8 @@ export const listDevices = action(contract, async ({ actor, query }, tx) => {
     after: after && { label: after.text, id: after.id },
   });
   const { page, nextCursor } = cutPage(rows, query.limit, ({ label, id }) => [label, id]);
+  // Whose each stimulator is stands in the list: that is a look at people's records.
+  for (const siteId of new Set(page.flatMap((device) => (device.assignedTo ? [device.siteId] : []))))
+    tx.record({ siteId, kind: 'read', subject: { kind: 'device_list', id: siteId } });
   return { items: page.map((device) => viewDevice(device, actor.role)), nextCursor };
 });
