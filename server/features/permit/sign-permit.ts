@@ -5,11 +5,19 @@ import type { Tx } from '@/server/action';
 import { ensureSigningKey } from '@/server/features/permit/signing-key';
 import type { PermitClaims } from '@/shared/contracts/permit';
 
-export async function signPermit(tx: Pick<Tx, 'db' | 'now' | 'vault'>, claims: PermitClaims): Promise<string> {
-  const { kid, publicX, sealedPrivate } = await ensureSigningKey(tx);
-  const d = Buffer.from(tx.vault.open(sealedPrivate)).toString('base64url');
-  const key = await importJWK({ kty: 'OKP', crv: 'Ed25519', x: publicX, d }, 'EdDSA');
+/** Both parts of the key as base64url (RFC 8037). */
+export async function signClaims(
+  claims: PermitClaims,
+  { kid, x, d }: { readonly kid: string; readonly x: string; readonly d: string },
+): Promise<string> {
+  const key = await importJWK({ kty: 'OKP', crv: 'Ed25519', x, d }, 'EdDSA');
   return new CompactSign(new TextEncoder().encode(JSON.stringify(claims)))
     .setProtectedHeader({ alg: 'EdDSA', kid, typ: 'JWT' })
     .sign(key);
+}
+
+export async function signPermit(tx: Pick<Tx, 'db' | 'now' | 'vault'>, claims: PermitClaims): Promise<string> {
+  const { kid, publicX, sealedPrivate } = await ensureSigningKey(tx);
+  const d = Buffer.from(tx.vault.open(sealedPrivate)).toString('base64url');
+  return signClaims(claims, { kid, x: publicX, d });
 }
