@@ -29,13 +29,23 @@ export interface CallInput<C extends ContractShape> {
   signal?: AbortSignal;
 }
 
-const offlineProblem: Problem = { type: 'about:blank', title: 'offline', status: 0, detail: 'offline', code: 'offline', requestId: '' };
+const offlineProblem: Problem = {
+  type: 'about:blank',
+  title: 'offline',
+  status: 0,
+  detail: 'offline',
+  code: 'offline',
+  requestId: '',
+};
 
 function addressOf(path: string, params: unknown, query: unknown, cursor: string | undefined): string {
-  const filled = path.replace(/:([A-Za-z]+)/g, (_whole, name: string) => encodeURIComponent(String(valueOf(params, name) ?? '')));
+  const filled = path.replace(/:([A-Za-z]+)/g, (_whole, name: string) =>
+    encodeURIComponent(String(valueOf(params, name) ?? '')),
+  );
   const search = new URLSearchParams();
   if (typeof query === 'object' && query !== null) {
-    for (const [name, value] of Object.entries(query)) if (value !== undefined && value !== null) search.set(name, String(value));
+    for (const [name, value] of Object.entries(query))
+      if (value !== undefined && value !== null) search.set(name, String(value));
   }
   if (cursor !== undefined) search.set('cursor', cursor);
   const text = search.toString();
@@ -43,13 +53,16 @@ function addressOf(path: string, params: unknown, query: unknown, cursor: string
 }
 
 function valueOf(object: unknown, name: string): unknown {
-  return typeof object === 'object' && object !== null ? Object.getOwnPropertyDescriptor(object, name)?.value : undefined;
+  return typeof object === 'object' && object !== null
+    ? Object.getOwnPropertyDescriptor(object, name)?.value
+    : undefined;
 }
 
 function payloadOf(body: unknown, file: Blob | undefined): { payload?: string | FormData; type?: string } {
   if (file) {
     const form = new FormData();
-    if (typeof body === 'object' && body !== null) for (const [name, value] of Object.entries(body)) form.set(name, String(value));
+    if (typeof body === 'object' && body !== null)
+      for (const [name, value] of Object.entries(body)) form.set(name, String(value));
     form.set('file', file);
     return { payload: form };
   }
@@ -80,7 +93,12 @@ export async function callDoor<C extends ContractShape>(contract: C, input: Call
   if (!response.ok) {
     const problem = Problem.safeParse(answer);
     const status = response.status;
-    throw new ApiProblem(problem.success ? problem.data : { ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
+    throw new ApiProblem(
+      problem.success
+        ? problem.data
+        : { ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' },
+      false,
+    );
   }
   return readBy<C['answer']>(contract.answer, answer, response.status);
 }
@@ -89,7 +107,10 @@ export async function callDoor<C extends ContractShape>(contract: C, input: Call
 function readBy<S extends z.ZodType>(schema: S, answer: unknown, status: number): z.output<S> {
   const parsed = schema.safeParse(answer);
   if (parsed.success) return parsed.data;
-  throw new ApiProblem({ ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' }, false);
+  throw new ApiProblem(
+    { ...offlineProblem, status, title: 'unreadable', detail: 'unreadable', code: 'unreadable' },
+    false,
+  );
 }
 
 /** Key of a read: the noun first, so that a write can mark a whole noun stale. */

@@ -2,7 +2,7 @@
 // stimulator's record was taken, so that nothing is logged twice or lost between two writes. It sends nothing.
 
 import type { SessionEvent } from '@/shared/contracts/permit';
-import type { EventRow, PhoneStore, RunRow } from './phone-store';
+import type { PhoneStore, RunRow } from './phone-store';
 
 type Bare<E> = E extends SessionEvent ? Omit<E, 'id' | 'sequence'> : never;
 export type EventFact = Bare<SessionEvent>;
@@ -24,21 +24,8 @@ export async function logEvents(
   drafts: readonly EventDraft[],
   change: RunChange = {},
 ): Promise<RunRow | null> {
-  const writing = store.transaction(['run', 'event'], 'readwrite');
-  const run = await writing.objectStore('run').get(permitId);
-  if (!run) {
-    await writing.done;
-    return null;
-  }
-  const rows = drafts.map((draft, place): EventRow => {
-    const event = eventOf(draft, run.nextSequence + place);
-    return { id: event.id, permitId, sequence: event.sequence, event };
+  return store.changeRun(permitId, (run) => {
+    const events = drafts.map((draft, place) => eventOf(draft, run.nextSequence + place));
+    return { run: { ...run, ...change, nextSequence: run.nextSequence + events.length }, events };
   });
-  const next: RunRow = { ...run, ...change, nextSequence: run.nextSequence + rows.length };
-  await Promise.all([
-    ...rows.map((row) => writing.objectStore('event').put(row)),
-    writing.objectStore('run').put(next),
-    writing.done,
-  ]);
-  return next;
 }

@@ -35,16 +35,33 @@ const day = 24 * hour;
 
 /** Formatting in a given language and zone. */
 export function formatIn(language: string, zone: string): Format {
-  const make = (options: Intl.DateTimeFormatOptions) => new Intl.DateTimeFormat(language === 'en' ? 'en-GB' : language, { timeZone: zone, ...options });
+  const make = (options: Intl.DateTimeFormatOptions) =>
+    new Intl.DateTimeFormat(language === 'en' ? 'en-GB' : language, { timeZone: zone, ...options });
   const longDay = make({ weekday: 'long', day: 'numeric', month: 'long' });
   const shortDay = make({ day: 'numeric', month: 'short' });
   const clock = make({ hour: '2-digit', minute: '2-digit', hourCycle: 'h23' });
   // A day of the calendar has no zone: read and written in the same one, it stays itself.
-  const calendar = new Intl.DateTimeFormat(language === 'en' ? 'en-GB' : language, { timeZone: 'UTC', day: 'numeric', month: 'short', year: 'numeric' });
-  const both = make({ weekday: 'short', day: 'numeric', month: 'short', hour: '2-digit', minute: '2-digit', hourCycle: 'h23' });
+  const calendar = new Intl.DateTimeFormat(language === 'en' ? 'en-GB' : language, {
+    timeZone: 'UTC',
+    day: 'numeric',
+    month: 'short',
+    year: 'numeric',
+  });
+  const both = make({
+    weekday: 'short',
+    day: 'numeric',
+    month: 'short',
+    hour: '2-digit',
+    minute: '2-digit',
+    hourCycle: 'h23',
+  });
   const at = (instant: string) => Date.parse(instant);
   const unit = (value: number, name: 'minute' | 'hour' | 'day') =>
-    new Intl.NumberFormat(language, { style: 'unit', unit: name, unitDisplay: name === 'day' ? 'long' : 'short' }).format(value);
+    new Intl.NumberFormat(language, {
+      style: 'unit',
+      unit: name,
+      unitDisplay: name === 'day' ? 'long' : 'short',
+    }).format(value);
   return {
     zone,
     // Intl in English puts a comma after the weekday that nobody writes.
@@ -69,7 +86,8 @@ export function formatIn(language: string, zone: string): Format {
     number: (value, digits = 2) => new Intl.NumberFormat(language, { maximumFractionDigits: digits }).format(value),
     fixed: (value, digits) =>
       new Intl.NumberFormat(language, { minimumFractionDigits: digits, maximumFractionDigits: digits }).format(value),
-    percent: (fraction) => new Intl.NumberFormat(language, { style: 'percent', maximumFractionDigits: 0 }).format(fraction),
+    percent: (fraction) =>
+      new Intl.NumberFormat(language, { style: 'percent', maximumFractionDigits: 0 }).format(fraction),
   };
 }
 

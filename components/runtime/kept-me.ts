@@ -4,20 +4,23 @@
 import { openDB, type DBSchema } from 'idb';
 import { useEffect, useState } from 'react';
 import { Me } from '@/shared/contracts/account';
+import { openVault, type Sealed } from './vault';
 
 interface Schema extends DBSchema {
-  me: { key: 'running'; value: unknown };
+  me: { key: 'running'; value: Sealed<Me> };
 }
 
 function store() {
-  return openDB<Schema>('rampwell-here', 1, { upgrade: (fresh) => void fresh.createObjectStore('me') });
+  return openDB<Schema>('rampwell-here-sealed', 1, { upgrade: (fresh) => void fresh.createObjectStore('me') });
 }
+
+const vault = () => openVault('rampwell.here');
 
 export async function keepMe(me: Me | null): Promise<void> {
   try {
     const here = await store();
     if (me === null) await here.delete('me', 'running');
-    else await here.put('me', me, 'running');
+    else await here.put('me', await (await vault()).seal(me), 'running');
     here.close();
   } catch {
     // Then a reload without a network asks to wait for it; the stimulator goes on by itself.
@@ -27,7 +30,8 @@ export async function keepMe(me: Me | null): Promise<void> {
 async function findMe(): Promise<Me | null> {
   try {
     const here = await store();
-    const kept = Me.safeParse(await here.get('me', 'running'));
+    const sealed = await here.get('me', 'running');
+    const kept = Me.safeParse(sealed && (await (await vault()).open(sealed)));
     here.close();
     return kept.success ? kept.data : null;
   } catch {

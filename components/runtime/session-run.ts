@@ -123,9 +123,9 @@ export class SessionRun {
     const run = freshRun(permit, site);
     try {
       const store = await this.parts.store(this.accountId);
-      const known = await store.get('run', permit.id);
-      for (const key of await store.getAllKeys('run')) if (key !== permit.id) await store.delete('run', key);
-      if (known === undefined) await store.put('run', run);
+      const known = await store.run(permit.id);
+      await store.forgetOtherRuns(permit.id);
+      if (known === undefined) await store.addRun(run);
       const contacts = device.status().contacts;
       await logEvents(
         store,
@@ -198,7 +198,7 @@ export class SessionRun {
     const status = this.device?.status();
     if (!status || status.identity?.deviceId !== permit.deviceId || status.session?.permitId === permit.id) return null;
     if (status.remembersSinceMs === null || status.remembersSinceMs > Date.parse(permit.issuedAt)) return null;
-    const run = await (await this.parts.store(this.accountId)).get('run', permit.id);
+    const run = await (await this.parts.store(this.accountId)).run(permit.id);
     // After whatever was logged on the way to a start that did not come.
     const sequence = run?.nextSequence ?? 0;
     const nothing = { atSeconds: 0, onSeconds: 0, chargeCoulomb: 0 };
@@ -216,7 +216,7 @@ export class SessionRun {
   async leave(): Promise<void> {
     const { run } = this.view;
     if (run?.phase !== 'ended') return;
-    await (await this.parts.store(this.accountId)).delete('run', run.permitId);
+    await (await this.parts.store(this.accountId)).forgetRun(run.permitId);
     this.show({ phase: 'none', run: null });
   }
 

@@ -149,12 +149,10 @@ export class UnsentSender {
 
   private async sendAllEvents(store: PhoneStore): Promise<void> {
     for (;;) {
-      const [first] = await store.getAllFromIndex('event', 'bySequence', undefined, 1);
+      const rows = await store.firstEvents(batchEvents);
+      const [first] = rows;
       if (!first) return;
-      const { permitId } = first;
-      const range = IDBKeyRange.bound([permitId, 0], [permitId, Number.MAX_SAFE_INTEGER]);
-      const rows = await store.getAllFromIndex('event', 'bySequence', range, batchEvents);
-      await this.sendBatch(store, permitId, rows);
+      await this.sendBatch(store, first.permitId, rows);
     }
   }
 
@@ -198,21 +196,18 @@ export class UnsentSender {
   }
 
   private async settle(store: PhoneStore, rows: readonly EventRow[], fateOf: (row: EventRow) => string): Promise<void> {
-    const writing = store.transaction(['event', 'aside'], 'readwrite');
-    const writes: Promise<unknown>[] = [];
-    for (const row of rows) {
-      const fate = fateOf(row);
-      if (fate === 'keep') continue;
-      writes.push(writing.objectStore('event').delete(row.id));
-      if (fate === 'forget') continue;
-      const aside: AsideRow = { id: row.id, kind: 'event', sessionId: null, code: fate, content: row };
-      writes.push(writing.objectStore('aside').put(aside));
-    }
-    await Promise.all([...writes, writing.done]);
+    const fates = rows.map((row) => ({ row, fate: fateOf(row) })).filter(({ fate }) => fate !== 'keep');
+    const asides = fates
+      .filter(({ fate }) => fate !== 'forget')
+      .map(({ row, fate }): AsideRow => ({ id: row.id, kind: 'event', sessionId: null, code: fate, content: row }));
+    await store.settleEvents(
+      fates.map(({ row }) => row.id),
+      asides,
+    );
   }
 
   private async sendDiaries(store: PhoneStore): Promise<void> {
-    for (const row of await store.getAll('diary')) {
+    for (const row of await store.diaries()) {
       await this.sendOne(store, 'diary', row, () =>
         callDoor(writeDiary, { params: { sessionId: row.sessionId }, body: row.body, key: row.key }),
       );
@@ -221,7 +216,7 @@ export class UnsentSender {
   }
 
   private async sendPhotos(store: PhoneStore): Promise<void> {
-    for (const row of await store.getAll('photo')) {
+    for (const row of await store.photos()) {
       await this.sendOne(store, 'photo', row, () =>
         callDoor(addPhoto, {
           params: { sessionId: row.sessionId },
@@ -250,8 +245,9 @@ export class UnsentSender {
       // Written already, by this phone before a lost answer or by another: then it is there.
       code = problem.problem.code === 'diary.already_written' ? null : problem.problem.code;
     }
-    if (code !== null) await store.put('aside', { id: row.key, kind, sessionId: row.sessionId, code, content: row });
-    await store.delete(kind, row.key);
+    if (code !== null && kind === 'photo') return store.keepPhotoAside({ id: row.key, sessionId: row.sessionId, code });
+    if (code !== null) await store.keepAside({ id: row.key, kind, sessionId: row.sessionId, code, content: row });
+    await store.forget(kind, row.key);
   }
 
   private announce(nouns: readonly string[]): void {

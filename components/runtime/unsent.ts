@@ -42,14 +42,14 @@ async function takeUpRun(accountId: string): Promise<void> {
 /** Keeps a diary and tries to send it. True once the server has it; false while it waits here. */
 export async function handOverDiary(accountId: string, diary: DiaryRow, photo: PhotoRow | null): Promise<boolean> {
   const store = await phoneStore(accountId);
-  await store.put('diary', diary);
-  if (photo) await store.put('photo', photo);
+  await store.keepDiary(diary);
+  if (photo) await store.keepPhoto(photo);
   const sender = senderOf(accountId);
   await sender.flush();
-  return (await store.get('diary', diary.key)) === undefined;
+  return !(await store.holds('diary', diary.key));
 }
 
 /** Why the server refused what was handed over under this key; null if it did not. */
 export async function refusalOf(accountId: string, key: string): Promise<string | null> {
-  return (await (await phoneStore(accountId)).get('aside', key))?.code ?? null;
+  return (await (await phoneStore(accountId)).aside(key))?.code ?? null;
 }

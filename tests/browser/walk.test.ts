@@ -502,7 +502,7 @@ tell(
 
     await clinician.follow('Worklist');
     await clinician.visit('/worklist', 'Worklist');
-    await clinician.page.getByRole('cell', { name: 'Three planned sessions missed running.' }).waitFor();
+    await clinician.page.getByRole('cell', { name: /^3 planned sessions missed in a row\./ }).waitFor();
   },
 );
 

@@ -119,7 +119,7 @@ it('keeps refused events aside under their reason and goes on with the others', 
   await sender.flush();
   expect(sender.read()).toMatchObject({ count: 0 });
   expect(sender.read().refused).toBeGreaterThan(0);
-  const aside = await (await phoneStore(accountId)).getAll('aside');
+  const aside = await (await phoneStore(accountId)).asides();
   expect(new Set(aside.map((row) => row.code))).toEqual(new Set(['sequence_taken']));
   expect(kinds()).toContain('started');
 });
