@@ -298,7 +298,7 @@ export interface ListedAccount {
   participantId: string | null;
 }
 
-/** All accounts with their sites, staff first. */
+/** All accounts with their sites (a caregiver's: those of the people they help), staff first. */
 export async function listAccounts(db: Db, limit: number): Promise<ListedAccount[]> {
   const rows = await db
     .select({
@@ -318,6 +318,13 @@ export async function listAccounts(db: Db, limit: number): Promise<ListedAccount
     .from(membership)
     .innerJoin(site, eq(site.id, membership.siteId))
     .orderBy(site.name);
+  const helped = await db
+    .selectDistinct({ accountId: caregiver.accountId, siteName: site.name })
+    .from(caregiver)
+    .innerJoin(participant, eq(participant.id, caregiver.participantId))
+    .innerJoin(site, eq(site.id, participant.siteId))
+    .where(isNull(caregiver.closedAt))
+    .orderBy(site.name);
   const ownSites = rows.flatMap((row) => (row.ownSite ? [row.ownSite] : []));
   const named =
     ownSites.length === 0
@@ -328,7 +335,7 @@ export async function listAccounts(db: Db, limit: number): Promise<ListedAccount
     ...row,
     siteNames: ownSite
       ? [nameOf.get(ownSite) ?? '']
-      : memberships.filter((one) => one.accountId === row.id).map((one) => one.siteName),
+      : [...memberships, ...helped].filter((one) => one.accountId === row.id).map((one) => one.siteName),
   }));
 }
 

@@ -9,7 +9,7 @@ const yearSeconds = 31_536_000;
 
 /** Camera by the file field needs no permission of ours; the screen stays awake during a session. */
 const permissions =
-  'accelerometer=(), camera=(), geolocation=(), gyroscope=(), magnetometer=(), microphone=(), payment=(), usb=(), bluetooth=(self), screen-wake-lock=(self)';
+  'accelerometer=(), camera=(), geolocation=(), gyroscope=(), magnetometer=(), microphone=(), payment=(), usb=(), screen-wake-lock=(self)';
 
 export function securityHeaders(isHttps: boolean) {
   const guard = helmet({
