@@ -1,7 +1,7 @@
 // Sessions and their events: found, locked, listed, begun once, closed once. Events are added and never changed. What a record amounts to
 // is asked of shared/rules/session-summary.ts.
 
-import { and, asc, desc, eq, gte, inArray, isNull, lt, or, sql } from 'drizzle-orm';
+import { and, asc, desc, eq, inArray, isNull, lt, or, sql } from 'drizzle-orm';
 import { z } from 'zod';
 import type { Db } from '@/db/client';
 import { prescription } from '@/db/schema/course';
@@ -229,21 +229,17 @@ export async function listKeptEvents(db: Db, sessionId: string) {
     .where(eq(sessionEvent.sessionId, sessionId));
 }
 
-/** The events themselves in their own order; of some kinds, or from a time on, if so asked. */
+/** The events themselves in their own order; of some kinds if so asked. */
 export async function listEventBodies(
   db: Db,
   sessionId: string,
-  want: { kinds?: readonly string[]; fromMs?: number } = {},
+  want: { kinds?: readonly string[] } = {},
 ): Promise<unknown[]> {
   const rows = await db
     .select({ body: sessionEvent.body })
     .from(sessionEvent)
     .where(
-      and(
-        eq(sessionEvent.sessionId, sessionId),
-        want.kinds ? inArray(sessionEvent.kind, [...want.kinds]) : undefined,
-        want.fromMs === undefined ? undefined : gte(sessionEvent.atMs, want.fromMs),
-      ),
+      and(eq(sessionEvent.sessionId, sessionId), want.kinds ? inArray(sessionEvent.kind, [...want.kinds]) : undefined),
     )
     .orderBy(asc(sessionEvent.sequence));
   return rows.map((row) => row.body);

@@ -2,7 +2,6 @@
 
 import type { RedFlag } from '@/shared/values/codes';
 import { redFlags } from '@/shared/values/codes';
-import { millisecondsOf } from '@/shared/values/units';
 import type { LockoutFacts } from './lockout';
 import { padPainOf } from './pad-pain';
 import { samplesOf, type RecordedEvent } from './session-summary';
@@ -10,18 +9,13 @@ import { samplesOf, type RecordedEvent } from './session-summary';
 /** The plain word for it, beside the sensations that count as pain at a pad (pad-pain.ts). */
 const padPain = 'pain_at_pad';
 
-/** Samples this near before a batch may belong to the same run above the permit. Own choice. */
-const nearSeconds = 10;
-
-/** From where on earlier samples matter beside these; null when the batch has none. */
-export function samplesBeforeMs(events: readonly RecordedEvent[]): number | null {
-  const seconds = samplesOf(events).map(([at]) => at);
-  return seconds.length === 0 ? null : millisecondsOf(Math.max(0, Math.min(...seconds) - nearSeconds));
-}
-
+/**
+ * @param keptSamples all events with samples that are kept of the session, these among them: a run above the permit may lie across two
+ * batches, and one event may begin long before it ends
+ */
 export function runFactsOf(
   events: readonly RecordedEvent[],
-  nearSamples: readonly RecordedEvent[],
+  keptSamples: readonly RecordedEvent[],
   permittedMilliamp: number,
 ): NonNullable<LockoutFacts['during']> {
   const flags = events.flatMap(({ kind, flag }): RedFlag[] =>
@@ -37,6 +31,6 @@ export function runFactsOf(
     painAtPad: pains.length === 0 ? undefined : Math.max(...pains),
     permittedMilliamp,
     // Without new samples nothing new can be above the permit.
-    samples: samples.length === 0 ? [] : [...samplesOf(nearSamples), ...samples],
+    samples: samples.length === 0 ? [] : [...samplesOf(keptSamples), ...samples],
   };
 }

@@ -286,12 +286,10 @@ it('quarantines a stimulator that gives more than permitted, locks and pages, th
   const permit = await permitFor(clinic, ready);
   await clinic.advance(200);
   const more = (from: number): [number, number][] => [[from, 2.2]];
-  await send(
-    clinic,
-    ready.patient,
-    permit,
-    numbered([{ kind: 'samples', atSeconds: 60, samples: more(60), impedance: [] }]),
-  );
+  // The event in which it begins had begun long before.
+  const minute = Array.from({ length: 60 }, (_, second): [number, number] => [second, Math.min(2, second / 15)]);
+  const samples = [...minute, ...more(60)];
+  await send(clinic, ready.patient, permit, numbered([{ kind: 'samples', atSeconds: 0, samples, impedance: [] }]));
   expect(await lockoutsOf(ready.patient)).toEqual([]);
   await send(
     clinic,

@@ -11,7 +11,7 @@ import type { SessionEvent } from '@/shared/contracts/permit';
 import { consequencesOf } from '@/shared/rules/consequences';
 import { lockoutsAfterDiary } from '@/shared/rules/lockout';
 import { findingsOfEffects } from '@/shared/rules/lockout-findings';
-import { runFactsOf, samplesBeforeMs } from '@/shared/rules/session-run-facts';
+import { runFactsOf } from '@/shared/rules/session-run-facts';
 
 export async function storeRunFindings(
   tx: Tx,
@@ -20,10 +20,9 @@ export async function storeRunFindings(
   now: string,
 ): Promise<void> {
   const { id, participantId, siteId, dose, permit } = session;
-  const fromMs = samplesBeforeMs(accepted);
-  // A run above the permit may lie across two batches.
-  const near = fromMs === null ? [] : eventsOf(await listEventBodies(tx.db, id, { kinds: ['samples'], fromMs }));
-  const found = lockoutsAfterDiary({ during: runFactsOf(accepted, near, dose.intensityMilliamp) });
+  const hasSamples = accepted.some(({ kind }) => kind === 'samples');
+  const kept = hasSamples ? eventsOf(await listEventBodies(tx.db, id, { kinds: ['samples'] })) : [];
+  const found = lockoutsAfterDiary({ during: runFactsOf(accepted, kept, dose.intensityMilliamp) });
   if (found.effects.length === 0) return;
   const known = [...(await listLockoutsFrom(tx.db, [id])), ...(await listOpenLockouts(tx.db, participantId, now))];
   const consequences = consequencesOf(
