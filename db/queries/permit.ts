@@ -1,7 +1,7 @@
 // Permits: found, counted, made, closed once. A permit is never changed; the partial unique index of the schema keeps one live
 // permit a participant, so an insert that loses a race answers null instead of failing the transaction.
 
-import { and, asc, eq, gt, isNull, lte, sql } from 'drizzle-orm';
+import { and, asc, eq, gt, isNull, lte, ne, sql } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { prescription } from '@/db/schema/course';
 import { device } from '@/db/schema/device';
@@ -181,14 +181,22 @@ export interface SigningKeyRecord {
   kid: string;
   publicX: string;
   sealedPrivate: string;
+  createdAt: string;
+  /** Set when it was withdrawn. */
+  closedAt: string | null;
 }
 
-/** Keys that sign or have signed, oldest first; closed ones are no longer trusted. */
+/** Every key that ever signed, old to new; which of them is trusted is asked of shared/rules/permit-keys.ts. */
 export async function listSigningKeys(db: Db): Promise<SigningKeyRecord[]> {
   return db
-    .select({ kid: signingKey.kid, publicX: signingKey.publicX, sealedPrivate: signingKey.sealedPrivate })
+    .select({
+      kid: signingKey.kid,
+      publicX: signingKey.publicX,
+      sealedPrivate: signingKey.sealedPrivate,
+      createdAt: signingKey.createdAt,
+      closedAt: signingKey.closedAt,
+    })
     .from(signingKey)
-    .where(isNull(signingKey.closedAt))
     .orderBy(asc(signingKey.createdAt), asc(signingKey.kid));
 }
 
@@ -197,6 +205,16 @@ export async function lockSigningKeys(db: Db): Promise<void> {
   await db.execute(sql`select pg_advisory_xact_lock(hashtext('rampwell.signing_key'))`);
 }
 
-export async function insertSigningKey(db: Db, row: SigningKeyRecord & { createdAt: string }): Promise<void> {
+export async function insertSigningKey(db: Db, row: Omit<SigningKeyRecord, 'closedAt'>): Promise<void> {
   await db.insert(signingKey).values(row);
+}
+
+/** Withdraws every key but one; gives back the names of those that were open. */
+export async function closeOtherSigningKeys(db: Db, kid: string, at: string): Promise<string[]> {
+  const closed = await db
+    .update(signingKey)
+    .set({ closedAt: at, closedWhy: 'withdrawn' })
+    .where(and(ne(signingKey.kid, kid), isNull(signingKey.closedAt)))
+    .returning({ kid: signingKey.kid });
+  return closed.map((each) => each.kid);
 }

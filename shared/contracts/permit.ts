@@ -38,14 +38,16 @@ export const PermitClaims = z.strictObject({
   participant: Uuid,
   device: Uuid,
   session: Uuid,
+  course: Uuid,
+  /** Within its course. */
   prescriptionVersion: z.number().int(),
   counter: z.number().int(),
   waveform: z.enum(['tDCS']),
-  intensityMicroamp: z.number().int(),
-  rampUpMs: z.number().int(),
-  holdMs: z.number().int(),
-  rampDownMs: z.number().int(),
-  chargeMicrocoulomb: z.number().int(),
+  intensityMicroamp: z.number().int().positive(),
+  rampUpMs: z.number().int().nonnegative(),
+  holdMs: z.number().int().nonnegative(),
+  rampDownMs: z.number().int().nonnegative(),
+  chargeMicrocoulomb: z.number().int().positive(),
   montage: z.array(z.strictObject({ position: z.string(), polarity: z.enum(['anode', 'cathode']) })),
 });
 export type PermitClaims = z.infer<typeof PermitClaims>;

@@ -99,6 +99,7 @@ it('signs what the stimulator is told by a published Ed25519 key, bound to perso
     participant: ready.patient.participantId,
     device: ready.deviceId,
     session: permit.sessionId,
+    course: ready.courseId,
     prescriptionVersion: 1,
     counter: permit.counter,
     waveform: 'tDCS',

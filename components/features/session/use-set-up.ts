@@ -4,7 +4,7 @@
 import { useRouter } from 'expo-router';
 import { useState } from 'react';
 import { ApiProblem, callDoor, useCall, useRead } from '@/components/runtime/api';
-import type { StartRefusal } from '@/components/runtime/device/stimulator';
+import type { DeviceIdentity, Pairing, StartAnswer, StartRefusal } from '@/components/runtime/device/stimulator';
 import { canKeep } from '@/components/runtime/phone-store';
 import { useMe } from '@/components/runtime/me';
 import { useSessionRun } from '@/components/runtime/use-session-run';
@@ -18,6 +18,15 @@ export type StartProblem =
   | { from: 'stimulator'; why: StartRefusal }
   | { from: 'network' }
   | { from: 'ended' };
+
+/** What the stimulator is told when it is found. */
+function pairingOf(
+  device: { id: string; serial: string },
+  keys: Pairing['keys'],
+  { participantId, asOf }: ClearanceView,
+): Pairing {
+  return { deviceId: device.id, serial: device.serial, keys, participantId, now: asOf };
+}
 
 export function useSetUp() {
   const router = useRouter();
@@ -45,8 +54,7 @@ export function useSetUp() {
     const isKept = await canKeep(me.account.id);
     setUnkept(!isKept);
     if (isKept) {
-      const { id: deviceId, serial } = ownDevice.data;
-      await stimulator.pair({ deviceId, serial, keys: keys.data.keys, now: answer.asOf });
+      await stimulator.pair(pairingOf(ownDevice.data, keys.data.keys, answer));
       setFound(true);
     }
     setBusy(false);
@@ -71,6 +79,17 @@ export function useSetUp() {
     });
   }
 
+  /** The clinic may have changed its keys since the stimulator was found: then it is told the new ones, once. */
+  async function begin(permit: PermitView, given: ClearanceView, found: DeviceIdentity): Promise<StartAnswer> {
+    if (!session) return { started: false, why: 'not_paired' };
+    const began = await session.begin(permit, given.site, found);
+    if (began.started || began.why !== 'permit_foreign' || !ownDevice.data) return began;
+    const [fresh, { data: present }] = await Promise.all([keys.refetch(), clearance.refetch()]);
+    if (!fresh.data || !present) return began;
+    await session.stimulator()?.pair(pairingOf(ownDevice.data, fresh.data.keys, present));
+    return session.begin(permit, given.site, found);
+  }
+
   async function start(): Promise<void> {
     if (!session || !answer || !identity || isBusy) return;
     setBusy(true);
@@ -82,7 +101,7 @@ export function useSetUp() {
         setProblem({ from: 'ended' });
         await clearance.refetch();
       } else {
-        const began = await session.begin(permit, answer.site, identity);
+        const began = await begin(permit, answer, identity);
         if (began.started) router.replace('/run');
         else setProblem({ from: 'stimulator', why: began.why });
       }

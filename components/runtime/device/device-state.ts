@@ -32,12 +32,14 @@ export interface KeptSession {
 }
 
 export interface KeptState {
-  pairing: { deviceId: string; serial: string; keys: PermitKey[] } | null;
+  pairing: { deviceId: string; serial: string; keys: PermitKey[]; participantId?: string | undefined } | null;
   /** The server's time less the phone's, when it was last told. */
   clockAheadMs: number;
   /** No time before this is believed. */
   notBeforeMs: number;
   highestCounter: number;
+  /** The newest version of the course last started; absent or null = none yet. */
+  newestVersion?: { course: string; version: number } | null;
   /** When its memory begins, by the time it was told at its first pairing; null = not known. */
   remembersSinceMs: number | null;
   uptimeSeconds: number;

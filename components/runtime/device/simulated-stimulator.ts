@@ -116,11 +116,13 @@ export class SimulatedStimulator implements Stimulator {
     const toldMs = Date.parse(pairing.now);
     if (this.state.pairing?.deviceId !== pairing.deviceId) {
       this.state.highestCounter = 0;
+      this.state.newestVersion = null;
       this.state.remembersSinceMs = toldMs;
       this.state.notBeforeMs = 0;
       this.state.chargedAtMs = null;
     }
-    this.state.pairing = { deviceId: pairing.deviceId, serial: pairing.serial, keys: [...pairing.keys] };
+    const { deviceId, serial, participantId } = pairing;
+    this.state.pairing = { deviceId, serial, participantId, keys: [...pairing.keys] };
     this.clock.tellTime(toldMs);
     const chargedAt = this.state.chargedAtMs;
     if (this.running() === null && (chargedAt === null || toldMs - chargedAt > chargeAfterMs)) {
@@ -163,8 +165,10 @@ export class SimulatedStimulator implements Stimulator {
       token: permitToken,
       keys: pairing.keys,
       deviceId: pairing.deviceId,
+      participantId: pairing.participantId,
       nowMs: this.clock.nowMs(),
       highestCounter: this.state.highestCounter,
+      newestVersion: this.state.newestVersion ?? null,
     });
     if (!finding.ok) return { started: false, why: finding.why };
     const { claims } = finding;
@@ -175,8 +179,10 @@ export class SimulatedStimulator implements Stimulator {
 
   /** The counter is written before any current flows: whatever happens next, this permit cannot start it twice. */
   private async begin(claims: PermitClaims): Promise<StartAnswer> {
-    const before = { session: this.state.session, highestCounter: this.state.highestCounter };
+    const { session, highestCounter, newestVersion } = this.state;
+    const before = { session, highestCounter, newestVersion };
     this.state.highestCounter = claims.counter;
+    this.state.newestVersion = { course: claims.course, version: claims.prescriptionVersion };
     this.clock.believeNotBefore(millisecondsOf(claims.iat));
     this.state.session = freshSession(claims, seedOf(claims.jti), this.clock.settle());
     this.keeper.takeUp(claims.session, [], []);

@@ -34,6 +34,8 @@ export interface Pairing {
   deviceId: string;
   serial: string;
   keys: readonly PermitKey[];
+  /** Who wears it; a permit for anybody else is refused. Not told: not checked. */
+  participantId?: string | undefined;
   /** The server's time: a stimulator has no clock of its own that lasts without its battery. */
   now: string;
 }
@@ -45,9 +47,12 @@ export const startRefusals = [
   'permit_foreign',
   'permit_altered',
   'permit_other_device',
+  'permit_other_person',
   'permit_expired',
   'permit_not_yet',
   'permit_old',
+  'permit_older_version',
+  'permit_above_ceiling',
   'permit_other_placement',
   'cannot_check',
   'contact_not_good',

@@ -8,6 +8,7 @@ import { parseInstant } from '@/shared/values/zone';
 interface Given {
   id: string;
   participantId: string;
+  courseId: string;
   deviceId: string;
   counter: number;
   issuedAt: string;
@@ -33,6 +34,7 @@ export function claimsOf(
     participant: permit.participantId,
     device: permit.deviceId,
     session: sessionId,
+    course: permit.courseId,
     prescriptionVersion: prescription.version ?? 0,
     counter: permit.counter,
     waveform: prescription.waveform,

@@ -34,6 +34,7 @@ export function claimsOf(change: Partial<PermitClaims> = {}): PermitClaims {
     participant: '3f0c4a1b-2c3d-4e5f-8a9b-0c1d2e3f4a5b',
     device: deviceId,
     session: '9a53e5f0-c4a1-4b2c-8d3e-4f5a6b7c8d9e',
+    course: '5f2c3e8f-6f0b-4a62-8b6a-0e5d3c1b2a91',
     prescriptionVersion: 1,
     counter: 7,
     waveform: 'tDCS',

@@ -1,0 +1,28 @@
+// A new key for permits. The ones before it stay trusted until the permits under them are over, or are withdrawn at once where one may have
+// been seen by others. For `npm run keys:rotate`; opens no port.
+
+import { closeOtherSigningKeys, lockSigningKeys } from '@/db/queries/permit';
+import type { Tx } from '@/server/action';
+import { makeSigningKey } from '@/server/features/permit/signing-key';
+import type { Transact } from '@/server/transact';
+
+export interface Rotated {
+  kid: string;
+  withdrawn: readonly string[];
+}
+
+async function rotate(tx: Tx, isWithdrawing: boolean): Promise<Rotated> {
+  await lockSigningKeys(tx.db);
+  const { kid, createdAt } = await makeSigningKey(tx);
+  const withdrawn = isWithdrawing ? await closeOtherSigningKeys(tx.db, kid, createdAt) : [];
+  tx.record({ subject: { kind: 'signing_key', id: kid }, after: { kid, withdrawn } });
+  return { kid, withdrawn };
+}
+
+export async function rotateKeys(transact: Transact, { withdraw }: { withdraw: boolean }): Promise<Rotated> {
+  let rotated: Rotated = { kid: '', withdrawn: [] };
+  await transact.note({ kind: 'system', job: 'keys.rotate' }, 'keys.rotate', null, async (tx) => {
+    rotated = await rotate(tx, withdraw);
+  });
+  return rotated;
+}
