@@ -229,7 +229,7 @@ export const sendEvents = contract({
     sessionState: z.enum(['permitted', 'running', 'awaiting_record', 'closed', 'void']),
     /** Sequence numbers not yet here, up to the highest one that is. */
     missing: z.array(z.number().int()),
-    /** void: the permit was revoked; the device ramps down when `rampDown`. */
+    /** `rampDown`: what runs on it goes down; `voidedBy` says why, also where the permit was used before. */
     permit: z.strictObject({
       state: z.enum(['live', 'used', 'expired', 'void']),
       voidedBy: z.string().nullable(),

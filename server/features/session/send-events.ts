@@ -2,6 +2,7 @@
 // more, the session is closed with what was truly delivered.
 
 import { findOpenPause, lockCourse } from '@/db/queries/course-state';
+import { findDevice } from '@/db/queries/device';
 import { listOpenLockouts } from '@/db/queries/lockout';
 import { findPrescriptionInForce } from '@/db/queries/prescription';
 import {
@@ -18,8 +19,8 @@ import { eventsOf, incomingOf, rowOf } from '@/server/features/session/event-row
 import { flagRecord } from '@/server/features/session/flag-record';
 import { storeRunFindings } from '@/server/features/session/store-run-findings';
 import { sendEvents as contract, type SessionEvent } from '@/shared/contracts/permit';
-import { permitState } from '@/shared/rules/permit';
 import { permitStateAt } from '@/shared/rules/permit-state';
+import { rampDownCause } from '@/shared/rules/running';
 import {
   judgeEvents,
   missingSequences,
@@ -34,16 +35,17 @@ function lastSequenceOf(events: readonly SessionEvent[]): number | null {
   return ended?.kind === 'ended' ? ended.lastSequence : null;
 }
 
-/** Changed, paused or locked since the permit was given: whatever runs on it ramps down. */
-async function isRevoked(tx: Tx, session: SessionRecord, now: string): Promise<boolean> {
-  const { permit, courseId, participantId } = session;
-  const present = {
-    // Nothing in force is as good as another version.
-    prescriptionVersion: (await findPrescriptionInForce(tx.db, courseId))?.version ?? 0,
+/** What has happened since the permit was given, asked of the rule: what runs on it goes down, or goes on to its end. */
+async function causeToRampDown(tx: Tx, session: SessionRecord, voidedBy: string | null, now: string) {
+  const { permit, courseId, participantId, siteId } = session;
+  return rampDownCause({
+    voidedBy,
+    running: session.dose,
+    inForce: (await findPrescriptionInForce(tx.db, courseId))?.dose ?? null,
     isPaused: (await findOpenPause(tx.db, courseId)) !== null,
     isLocked: (await listOpenLockouts(tx.db, participantId, now)).length > 0,
-  };
-  return permitState(permit, present, now).reasons.includes('permit_revoked');
+    device: (await findDevice(tx.db, [siteId], permit.deviceId))?.state ?? null,
+  });
 }
 
 async function answerOf(tx: Tx, session: SessionRecord, verdicts: readonly EventVerdict[], now: string) {
@@ -52,6 +54,7 @@ async function answerOf(tx: Tx, session: SessionRecord, verdicts: readonly Event
   const kept = await listKeptEvents(tx.db, session.id);
   const end = lastSequenceOf(eventsOf(await listEventBodies(tx.db, session.id, { kinds: ['ended'] })));
   const isOver = session.closedAt !== null || session.endedAt !== null;
+  const cause = isOver ? null : await causeToRampDown(tx, session, voidedBy, now);
   return {
     stored: idsOf('store'),
     known: idsOf('known'),
@@ -59,7 +62,7 @@ async function answerOf(tx: Tx, session: SessionRecord, verdicts: readonly Event
     sessionId: session.id,
     sessionState: sessionWordOf({ ...session, plannedSeconds: plannedSecondsOf(session.dose) }, state, now),
     missing: missingSequences(kept, end),
-    permit: { state, voidedBy, rampDown: !isOver && (state === 'void' || (await isRevoked(tx, session, now))) },
+    permit: { state, voidedBy: voidedBy ?? cause, rampDown: cause !== null },
   };
 }
 
