@@ -566,7 +566,7 @@ tell('coordinator, monitor and administrator see what is theirs and cannot do wh
   // A coordinator equips and writes to people, and cannot prescribe.
   await openJuniper(coordinator);
   await coordinator.visit(`/participants/${participantId}/prescription`, 'The prescription');
-  await coordinator.page.getByText('In force: version 2', { exact: false }).waitFor();
+  await coordinator.page.getByText(/^Version 2 · 1\.5 mA · in force/).waitFor();
   expect(await coordinator.page.getByRole('textbox').count()).toBe(0);
 
   // A monitor reads by pseudonym.

@@ -43,9 +43,11 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
       cell: (row) => (
         <View>
           <Text weight="bold">{row.name}</Text>
-          <Text size="fine" tone="muted" digits>
-            {row.code}
-          </Text>
+          {row.code === row.name ? null : (
+            <Text size="fine" tone="muted" digits>
+              {row.code}
+            </Text>
+          )}
         </View>
       ),
     },

@@ -32,12 +32,13 @@ export function PrescriptionScreen() {
   const all = versions.data?.pages.flatMap((page) => page.items) ?? [];
   const inForce = all.find((one) => one.status === 'signed') ?? null;
   const settings = protocols.data?.pages[0]?.items[0]?.settings;
+  const mayWrite = me?.account.role === 'clinician';
   return (
-    <RecordShell title={t(inForce ? 'amendTitle' : 'title')} participantId={participantId} name={person.data?.name ?? ''} maxRem={wideRem}>
+    <RecordShell title={t(mayWrite ? (inForce ? 'amendTitle' : 'title') : 'readTitle')} participantId={participantId} name={person.data?.name ?? ''} maxRem={wideRem}>
       {failed ? <FailedState onRetry={() => void Promise.all([person.refetch(), versions.refetch(), protocols.refetch()])} /> : null}
       {!failed && (!person.data || !versions.data || !settings || now === null) ? <LoadingState lines={10} /> : null}
       {person.data && versions.data && settings && now !== null ? (
-        <Content person={person.data} all={all} inForce={inForce} settings={settings} now={now} isClinician={me?.account.role === 'clinician'} accountName={me?.account.name ?? ''} />
+        <Content person={person.data} all={all} inForce={inForce} settings={settings} now={now} isClinician={mayWrite} accountName={me?.account.name ?? ''} />
       ) : null}
     </RecordShell>
   );

@@ -34,9 +34,12 @@ export function worklistColumns({ t, format, now, writes, onClaim, onOpen }: Col
       cell: (item) => (
         <View>
           <Text weight="bold">{item.name}</Text>
-          <Text size="fine" tone="muted" digits>
-            {item.code}
-          </Text>
+          {/* A monitor reads by pseudonym: the code stands where the name would. */}
+          {item.code === item.name ? null : (
+            <Text size="fine" tone="muted" digits>
+              {item.code}
+            </Text>
+          )}
         </View>
       ),
     },
