@@ -22,8 +22,8 @@ export interface KeptSession {
   stopWhy: StopWhy | null;
   isContactLost: boolean;
   grades: Record<string, ContactGrade>;
-  /** The last whole second that was measured; −1 before the first. */
-  measuredSecond: number;
+  /** The last tenth of a second that was lived through; −1 before the first. */
+  measuredTenth: number;
   lastSampleSeconds: number;
   entryCount: number;
   sampleCount: number;
@@ -91,7 +91,7 @@ export function freshSession(claims: PermitClaims, seed: number, uptimeSeconds: 
     stopWhy: null,
     isContactLost: false,
     grades: {},
-    measuredSecond: -1,
+    measuredTenth: -1,
     lastSampleSeconds: -1,
     // The line that it was started is written with it.
     entryCount: 1,

@@ -1,4 +1,4 @@
-// One session second by second as the simulated stimulator lives it: contact, current, its own watch over both, the record. The
+// One session, tenth by tenth of a second, as the simulated stimulator lives it: contact, current, its own watch over both, the record. The
 // same steps fill in the time while no page was open, so nothing differs then. The states come from shared/rules/session.ts.
 
 import { deliveredFrom, overCurrent, type Sample } from '@/shared/rules/delivered';
@@ -31,6 +31,7 @@ export interface Surroundings {
 const regulatorShare = 0.004;
 /** Contact goes on record at each change, and this often anyway. Own choice. */
 const contactEverySeconds = 60;
+const tenthsASecond = 10;
 /** Samples looked back at for an over-current, which needs 1 s. */
 const watchedSamples = 5;
 
@@ -100,29 +101,29 @@ export function stopAt(
   happen(session, around, written, seconds, 'stop');
 }
 
-function watchContact(session: KeptSession, around: Surroundings, written: Written, second: number): void {
-  const uptime = session.startedAtUptime + second;
+function watchContact(session: KeptSession, around: Surroundings, written: Written, now: number): void {
+  const uptime = session.startedAtUptime + now;
   const readings = around.pads.map((pad) => ({ position: pad.position, kiloohm: kiloohmAt(pad, uptime) }));
   for (const { position, kiloohm } of readings) {
     const grade = gradeOf(kiloohm);
-    if (session.grades[position] === grade && (second === 0 || second % contactEverySeconds !== 0)) continue;
+    if (session.grades[position] === grade && (now === 0 || now % contactEverySeconds !== 0)) continue;
     session.grades[position] = grade;
-    addEntry(session, written, second, { kind: 'contact', position, kiloohm, grade });
+    addEntry(session, written, now, { kind: 'contact', position, kiloohm, grade });
   }
   const grades = readings.map(({ kiloohm }) => gradeOf(kiloohm));
   if (!session.isContactLost && grades.includes('none')) {
     session.isContactLost = true;
-    happen(session, around, written, second, 'contact_lost');
+    happen(session, around, written, now, 'contact_lost');
   } else if (session.isContactLost && grades.every((grade) => grade === 'good')) {
     session.isContactLost = false;
-    happen(session, around, written, second, 'contact_back');
+    happen(session, around, written, now, 'contact_back');
   }
 }
 
-function endIfOver(session: KeptSession, around: Surroundings, written: Written, second: number): boolean {
-  const now = stateOf(session, second);
+function endIfOver(session: KeptSession, around: Surroundings, written: Written, at: number): boolean {
+  const now = stateOf(session, at);
   if (now.state !== 'ended' || now.endReason === null) return false;
-  const endedAt = now.endedAtSeconds ?? second;
+  const endedAt = now.endedAtSeconds ?? at;
   addSample(session, written, Math.max(endedAt, session.lastSampleSeconds), 0);
   session.endedAtSeconds = endedAt;
   session.endedWhy = now.endReason === 'stopped' && session.stopWhy ? endedWhyOfStop[session.stopWhy] : now.endReason;
@@ -139,16 +140,23 @@ function endIfOver(session: KeptSession, around: Surroundings, written: Written,
   return true;
 }
 
-/** Lives through every whole second up to `seconds`, or to the session's end. */
+/**
+ * Lives through every tenth of a second up to `seconds`, or to the session's end: contact is looked at each time, so that the 3 s of a lost one
+ * are kept to the tenth; current is measured on the whole seconds.
+ */
 export function measureUpTo(session: KeptSession, around: Surroundings, written: Written, seconds: number): void {
-  while (session.endedWhy === null && session.measuredSecond + 1 <= seconds) {
-    const second = session.measuredSecond + 1;
-    session.measuredSecond = second;
-    watchContact(session, around, written, second);
-    if (endIfOver(session, around, written, second)) return;
-    addSample(session, written, second, measuredMilliamp(session, around, second));
-    const watched = [...around.samples.slice(-watchedSamples), ...written.samples].slice(-watchedSamples);
-    if (overCurrent(watched, session.dose.intensityMilliamp) !== null)
-      stopAt(session, around, written, second, 'over_current');
+  while (session.endedWhy === null && (session.measuredTenth + 1) / tenthsASecond <= seconds) {
+    session.measuredTenth += 1;
+    const now = session.measuredTenth / tenthsASecond;
+    if (endIfOver(session, around, written, now)) return;
+    watchContact(session, around, written, now);
+    if (session.measuredTenth % tenthsASecond === 0) watchCurrent(session, around, written, now);
   }
+}
+
+function watchCurrent(session: KeptSession, around: Surroundings, written: Written, second: number): void {
+  addSample(session, written, second, measuredMilliamp(session, around, second));
+  const watched = [...around.samples.slice(-watchedSamples), ...written.samples].slice(-watchedSamples);
+  if (overCurrent(watched, session.dose.intensityMilliamp) !== null)
+    stopAt(session, around, written, second, 'over_current');
 }

@@ -75,9 +75,14 @@ export class SimulatedStimulator implements Stimulator {
   }
 
   private tick(): void {
+    this.catchUp();
+    this.tell();
+  }
+
+  /** Lives through the time up to now. What is done to a pad counts from now on, not from the last tick. */
+  private catchUp(): void {
     const session = this.running();
     if (session !== null) this.advance(session);
-    this.tell();
   }
 
   private keep(written: Written): Promise<void> {
@@ -145,12 +150,14 @@ export class SimulatedStimulator implements Stimulator {
   }
 
   attend(position: string): void {
+    this.catchUp();
     attendPad(this.state, position, this.clock.settle());
     this.tell();
   }
 
   /** What a wearer can do to a pad and no app can: it comes off. For trying what happens then. */
   lift(position: string): void {
+    this.catchUp();
     liftPad(this.state, position);
     this.tell();
   }
