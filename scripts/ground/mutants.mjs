@@ -28,7 +28,7 @@ export default {
     '/tests/browser',
     '/tests/api',
   ],
-  reporters: ['clear-text', 'json'],
+  reporters: ['progress-append-only', 'clear-text', 'json'],
   jsonReporter: { fileName: '.rampwell/mutants/report.json' },
   clearTextReporter: { allowColor: false, logTests: false, reportTests: false },
   thresholds: { high: 95, low: 90, break: 85 },
