@@ -223,7 +223,7 @@ export const sendEvents = contract({
     stored: z.array(Uuid),
     known: z.array(Uuid),
     refused: z.array(
-      z.strictObject({ id: Uuid, code: z.enum(['other_content', 'from_the_future', 'sequence_taken', 'after_the_end', 'too_late']) }),
+      z.strictObject({ id: Uuid, code: z.enum(['other_content', 'from_the_future', 'sequence_taken', 'after_the_end', 'too_many']) }),
     ),
     sessionId: Uuid,
     sessionState: z.enum(['permitted', 'running', 'awaiting_record', 'closed', 'void']),

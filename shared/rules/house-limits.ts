@@ -25,6 +25,12 @@ export const eventAheadSeconds = 5;
 /** Numbers of missing events told at once; the phone asks again. Own choice. */
 export const mostMissingTold = 1000;
 
+/**
+ * Numbers that one session's events may have: 40 min with all pauses at one event a second for samples and one for each of four pads are
+ * fewer. A device or an app that says more has gone wrong, and would make every batch slower for all. Own choice.
+ */
+export const mostEventsPerSession = 20_000;
+
 /** Points of a stored curve: one a pixel on the widest picture. */
 export const mostCurvePoints = 400;
 

@@ -3,7 +3,7 @@
 
 import { isAbove } from '@/shared/values/units';
 import { isoOf, parseInstant } from '@/shared/values/zone';
-import { eventAheadSeconds, mostMissingTold, recordGraceSeconds } from './house-limits';
+import { eventAheadSeconds, mostEventsPerSession, mostMissingTold, recordGraceSeconds } from './house-limits';
 import type { PermitWord } from './permit-state';
 import { mostPauseSeconds } from './session/run';
 
@@ -17,7 +17,7 @@ export type IncomingEvent = {
   readonly lastSequence?: number;
 };
 export type KeptEvent = { readonly id: string; readonly sequence: number; readonly contentHash: string };
-export type RefusedCode = 'other_content' | 'from_the_future' | 'sequence_taken' | 'after_the_end';
+export type RefusedCode = 'other_content' | 'from_the_future' | 'sequence_taken' | 'after_the_end' | 'too_many';
 export type EventVerdict =
   | { readonly id: string; readonly verdict: 'store' | 'known' }
   | { readonly id: string; readonly verdict: 'refused'; readonly code: RefusedCode };
@@ -44,6 +44,7 @@ export function judgeEvents(
       return known.contentHash === event.contentHash ? { id, verdict: 'known' } : refused('other_content');
     }
     if (isAbove(event.latestSeconds, elapsedSeconds + eventAheadSeconds)) return refused('from_the_future');
+    if (Math.max(sequence, event.lastSequence ?? 0) >= mostEventsPerSession) return refused('too_many');
     if (taken.has(sequence)) return refused('sequence_taken');
     const isSecondEnd = event.lastSequence !== undefined && lastSequence !== null;
     if (isSecondEnd || (lastSequence !== null && sequence > lastSequence)) return refused('after_the_end');

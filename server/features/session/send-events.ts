@@ -27,8 +27,12 @@ import {
   secondsSince,
   sessionWordOf,
   type EventVerdict,
+  type RefusedCode,
 } from '@/shared/rules/session-record';
 import { plannedSecondsOf } from '@/shared/rules/session-summary';
+
+/** A batch of nothing but these is answered by its fields: there is nothing in it to keep, or to flag. */
+const hopeless: readonly RefusedCode[] = ['from_the_future', 'after_the_end', 'too_many'];
 
 function lastSequenceOf(events: readonly SessionEvent[]): number | null {
   const ended = events.find((event) => event.kind === 'ended');
@@ -77,9 +81,7 @@ export const sendEvents = action(contract, async ({ actor, params, body }, tx) =
 
   const verdicts = judgeEvents(body.events.map(incomingOf), kept, secondsSince(session.permit.issuedAt, now), end);
   const refusedAs = (id: string) => verdicts.find((each) => each.id === id && each.verdict === 'refused');
-  const isHopeless = verdicts.every(
-    (each) => each.verdict === 'refused' && (each.code === 'from_the_future' || each.code === 'after_the_end'),
-  );
+  const isHopeless = verdicts.every((each) => each.verdict === 'refused' && hopeless.includes(each.code));
   if (isHopeless) {
     return invalid(
       body.events.flatMap((event, index) => {
