@@ -30,9 +30,9 @@ function onScreen(preset, ownAlias = {}) {
       '^(victory-[a-z-]+)/es/(.*)$': '$1/lib/$2',
     },
     modulePathIgnorePatterns: ['<rootDir>/(dist|\\.rampwell)/'],
-    // The preset's own list, and jose, which ships ES modules only: the stimulator checks signatures with it.
+    // The preset's own list, and two that ship ES modules only: the stimulator checks signatures and codes with them.
     transformIgnorePatterns: require(`${preset}/jest-preset`).transformIgnorePatterns.map((pattern) =>
-      pattern.replace('(?!(', '(?!(jose/|'),
+      pattern.replace('(?!(', '(?!((jose|@noble)/|'),
     ),
   };
 }

@@ -8,6 +8,7 @@ import type { TrapezoidFacts } from '@/shared/rules/dose';
 import type { Polarity } from '@/shared/values/codes';
 import { milliampOf, secondsOf } from '@/shared/values/units';
 import type { PlacedPad } from './contact-model';
+import type { StandAloneState } from './stand-alone';
 import type { ContactGrade, DeviceEntry, DeviceWord, EndedWhy, PermitKey, StopWhy } from './stimulator';
 
 export interface KeptSession {
@@ -49,6 +50,8 @@ export interface KeptState {
   batteryPercent: number;
   chargedAtMs: number | null;
   isFaulty: boolean;
+  /** Set up by staff to run without a radio; absent or null = it takes permits. */
+  standAlone?: StandAloneState | null;
   electrodes: { position: string; polarity: Polarity }[];
   pads: PlacedPad[];
   session: KeptSession | null;
@@ -73,8 +76,10 @@ export function emptyState(wallMs: number): KeptState {
   };
 }
 
-/** A session that begins at this moment, as the permit's claims say. */
-export function freshSession(claims: PermitClaims, seed: number, uptimeSeconds: number): KeptSession {
+export type WhatBegins = Pick<KeptSession, 'sessionId' | 'permitId' | 'dose'>;
+
+/** What begins by a permit, as its claims say. */
+export function begunBy(claims: PermitClaims): WhatBegins {
   return {
     sessionId: claims.session,
     permitId: claims.jti,
@@ -84,6 +89,13 @@ export function freshSession(claims: PermitClaims, seed: number, uptimeSeconds: 
       holdSeconds: secondsOf(claims.holdMs),
       rampDownSeconds: secondsOf(claims.rampDownMs),
     },
+  };
+}
+
+/** A session that begins at this moment. */
+export function freshSession(what: WhatBegins, seed: number, uptimeSeconds: number): KeptSession {
+  return {
+    ...what,
     seed,
     startedAtUptime: uptimeSeconds,
     realSeconds: 0,

@@ -3,14 +3,29 @@
 // It must not take the app's word for anything but the time it is told and what the wearer does with the pads.
 
 import { millisecondsOf } from '@/shared/values/units';
-import type { PermitClaims } from '@/shared/contracts/permit';
 import { chanceAt, seedOf } from './chance';
 import { checkPermit, type PermitCheck, type PermitFinding } from './check-permit';
 import { DeviceClock, type Clocks } from './device-clock';
 import { RecordKeeper } from './device-record';
-import { emptyState, freshSession, type DeviceStore, type KeptSession, type KeptState } from './device-state';
+import {
+  begunBy,
+  emptyState,
+  freshSession,
+  type DeviceStore,
+  type KeptSession,
+  type KeptState,
+  type WhatBegins,
+} from './device-state';
 import { happen, measureUpTo, stateOf, stopAt, type Surroundings, type Written } from './measure';
 import { arePlacedSo, attendPad, contactsOf, liftPad, placePads, type PlacedElectrode } from './pads';
+import {
+  standAloneOf,
+  tryCode,
+  withEnd,
+  type CodeStart,
+  type StandAloneRun,
+  type StandAloneSetUp,
+} from './stand-alone';
 import type {
   DeviceIdentity,
   DeviceRecord,
@@ -90,6 +105,8 @@ export class SimulatedStimulator implements Stimulator {
       const used = Math.abs(milliamp ?? 0) * batteryPercentPerMilliampSecond;
       this.state.batteryPercent = Math.max(0, this.state.batteryPercent - used);
     }
+    const { standAlone } = this.state;
+    if (standAlone) this.state.standAlone = withEnd(standAlone, written.entries);
     return this.keeper.keep(this.state, written);
   }
 
@@ -162,12 +179,18 @@ export class SimulatedStimulator implements Stimulator {
     this.tell();
   }
 
+  /** What stands in the way of any start, whoever allows it. */
+  private obstacle(): 'faulty' | 'session_running' | 'battery_empty' | null {
+    if (this.state.isFaulty) return 'faulty';
+    if (this.running() !== null) return 'session_running';
+    return this.state.batteryPercent < batteryLeastPercent ? 'battery_empty' : null;
+  }
+
   async start(permitToken: string): Promise<StartAnswer> {
     const { pairing } = this.state;
     if (pairing === null) return { started: false, why: 'not_paired' };
-    if (this.state.isFaulty) return { started: false, why: 'faulty' };
-    if (this.running() !== null) return { started: false, why: 'session_running' };
-    if (this.state.batteryPercent < batteryLeastPercent) return { started: false, why: 'battery_empty' };
+    const obstacle = this.obstacle();
+    if (obstacle !== null) return { started: false, why: obstacle };
     const finding = await (this.parts.checkPermit ?? checkPermit)({
       token: permitToken,
       keys: pairing.keys,
@@ -181,26 +204,68 @@ export class SimulatedStimulator implements Stimulator {
     const { claims } = finding;
     if (!arePlacedSo(this.state, claims.montage)) return { started: false, why: 'permit_other_placement' };
     if (!this.isContactGood()) return { started: false, why: 'contact_not_good' };
-    return this.begin(claims);
-  }
-
-  /** The counter is written before any current flows: whatever happens next, this permit cannot start it twice. */
-  private async begin(claims: PermitClaims): Promise<StartAnswer> {
-    const { session, highestCounter, newestVersion } = this.state;
-    const before = { session, highestCounter, newestVersion };
+    // The counter is written before any current flows: whatever happens next, this permit cannot start it twice.
+    const { highestCounter, newestVersion } = this.state;
     this.state.highestCounter = claims.counter;
     this.state.newestVersion = { course: claims.course, version: claims.prescriptionVersion };
     this.clock.believeNotBefore(millisecondsOf(claims.iat));
-    this.state.session = freshSession(claims, seedOf(claims.jti), this.clock.settle());
-    this.keeper.takeUp(claims.session, [], []);
-    await this.keep({ entries: [{ index: 0, atSeconds: 0, kind: 'started', counter: claims.counter }], samples: [] });
+    const isBegun = await this.begin(begunBy(claims), seedOf(claims.jti), claims.counter);
+    if (isBegun) return { started: true };
+    Object.assign(this.state, { highestCounter, newestVersion });
+    return { started: false, why: 'record_unwritable' };
+  }
+
+  /** False when its record could not be written: then nothing has begun. */
+  private async begin(what: WhatBegins, seed: number, counter: number): Promise<boolean> {
+    const before = this.state.session;
+    this.state.session = freshSession(what, seed, this.clock.settle());
+    this.keeper.takeUp(what.sessionId, [], []);
+    await this.keep({ entries: [{ index: 0, atSeconds: 0, kind: 'started', counter }], samples: [] });
     if (!this.keeper.isKept) {
-      Object.assign(this.state, before);
-      return { started: false, why: 'record_unwritable' };
+      this.state.session = before;
+      return false;
     }
     this.startTicking();
     this.tick();
-    return { started: true };
+    return true;
+  }
+
+  /** Staff make it one without a radio: from then on it takes codes, and no permit. False for what may not be set. */
+  async setUpStandAlone(setUp: StandAloneSetUp): Promise<boolean> {
+    const standAlone = standAloneOf(setUp);
+    if (standAlone === null || this.running() !== null) return false;
+    this.state.standAlone = standAlone;
+    this.state.pairing = null;
+    this.state.batteryPercent = 100;
+    await this.keep(nothing());
+    return this.keeper.isKept;
+  }
+
+  /** A code typed on its keys. Each wrong one is written before it is answered: a battery taken out gives no further tries. */
+  async startByCode(typed: string): Promise<CodeStart> {
+    const { standAlone } = this.state;
+    if (!standAlone) return { started: false, why: 'not_set_up' };
+    const obstacle = this.obstacle();
+    if (obstacle !== null) return { started: false, why: obstacle };
+    // Before the code, so that a pad that has come loose uses none up.
+    if (!arePlacedSo(this.state, standAlone.electrodes)) return { started: false, why: 'permit_other_placement' };
+    if (!this.isContactGood()) return { started: false, why: 'contact_not_good' };
+    const tried = tryCode(standAlone, typed, this.clock.settle());
+    this.state.standAlone = tried.state;
+    if ('refused' in tried) {
+      await this.keep(nothing());
+      return this.keeper.isKept ? tried.refused : { started: false, why: 'record_unwritable' };
+    }
+    const { begins, counter } = tried;
+    const isBegun = await this.begin(begins, seedOf(begins.sessionId), counter);
+    if (isBegun) return { started: true, counter };
+    this.state.standAlone = standAlone;
+    return { started: false, why: 'record_unwritable' };
+  }
+
+  /** Its own record since staff set it up, for the read-out. */
+  runs(): readonly StandAloneRun[] {
+    return this.state.standAlone?.runs ?? [];
   }
 
   /** Something that happens to the running session now. */
