@@ -98,6 +98,10 @@ describe('permitExpiry', () => {
     expect(permitExpiry(undefined, 'now')).toEqual({ known: false, facts: ['now', 'current'] });
   });
 
+  it('is not known by a clock that cannot be read', () => {
+    expect(permitExpiry(present, 'today')).toEqual({ known: false, facts: ['now'] });
+  });
+
   it('is now where the hours are closed', () => {
     expect(permitExpiry({ ...present, hoursTo: '18:00' }, now)).toEqual({
       known: true,
@@ -128,6 +132,32 @@ describe('mayIssue', () => {
     });
   });
 
+  it('answers each wish in full, and says nothing that is not so', () => {
+    const [no, none] = [{ valid: false, isNewPermit: false }, { facts: [] }];
+    expect(mayIssue(undefined, present, undefined, now)).toEqual({
+      ...no,
+      reasons: ['unknown_fact'],
+      facts: ['ask.key'],
+    });
+    expect(mayIssue(permit, present, 'z', now)).toEqual({ ...no, ...none, reasons: ['live_permit'] });
+    expect(mayIssue(undefined, { ...present, hoursTo: '18:00' }, 'z', now)).toEqual({
+      ...no,
+      ...none,
+      reasons: ['outside_hours'],
+    });
+    expect(mayIssue(undefined, present, 'z', now)).toEqual({
+      ...{ valid: true, reasons: [], facts: [], isNewPermit: true },
+      ...{ expiresAt: '2026-05-12T16:35:00Z', expiresBy: 'issue' },
+    });
+    expect(mayIssue(permit, present, 'a', now)).toEqual({
+      valid: true,
+      ...none,
+      reasons: [],
+      isNewPermit: false,
+      permitId: 'k1',
+    });
+  });
+
   it('cannot tell a retry from a new wish without the keys', () => {
     expect(mayIssue(permit, present, undefined, now).facts).toEqual(['ask.key']);
     expect(mayIssue({ ...permit, key: undefined }, present, 'a', now).facts).toEqual(['permit.key']);
@@ -147,6 +177,24 @@ describe('releaseOf', () => {
     expect(releaseOf(permit, { type: 'record', isFinal: true, upperChargeCoulomb: 1, minutes: Number.NaN })).toEqual(
       whole,
     );
+    const endless = {
+      type: 'record',
+      isFinal: true,
+      upperChargeCoulomb: Number.POSITIVE_INFINITY,
+      minutes: 3,
+    } as const;
+    expect(releaseOf(permit, endless)).toEqual(whole);
     expect(releaseOf(permit, { type: 'readout' })).toEqual(whole);
+  });
+
+  it('takes a final record at its word, also that nothing flowed', () => {
+    const nothing = { type: 'record', isFinal: true, upperChargeCoulomb: 0, minutes: 0 } as const;
+    expect(releaseOf(permit, nothing)).toEqual({ state: 'closed', chargeCoulomb: 0, minutes: 0 });
+    expect(releaseOf(permit, { ...nothing, isFinal: false })).toMatchObject({ state: 'reserved' });
+    expect(releaseOf(permit, { type: 'readout', showsUse: false })).toEqual({
+      state: 'void',
+      chargeCoulomb: 0,
+      minutes: 0,
+    });
   });
 });

@@ -41,7 +41,7 @@ const rules = rowsOf('docs/safety-rules.md', /^SR-\d+\.\d+$/);
 const hazards = rowsOf('docs/hazards.md', /^H-\d+$/);
 
 /** The source of a test file by its short name: `rules/clearance`, `screens/session/run`. */
-const sources = new Map(
+const sources = new Map<string, string>(
   ['rules', 'api', 'screens'].flatMap((part) =>
     readdirSync(path.join(root, 'tests', part), { recursive: true, encoding: 'utf8' })
       .filter((file) => /\.test\.tsx?$/.test(file))
