@@ -162,20 +162,31 @@ export interface ActionInput<C extends ContractShape> {
   key: string | null;
   /** The file of an `upload` contract. */
   file: UploadedFile | null;
+  /** Of a `confirm` contract: when the house checked the password that came with it. */
+  confirmedAt: string | null;
   requestId: string;
 }
 
 export interface Action<C extends ContractShape = ContractShape> {
   contract: C;
+  /** Set where the asker's own scope is too narrow: a site that is only being made, a link from a mail that is the authority (D22). */
+  scope?: 'house';
   run(input: ActionInput<C>, tx: Tx): Promise<AnswerOf<C> | Refusal>;
+}
+
+/** The moment for a signature; nothing is signed without the password, so a door that does not ask for it is a fault. */
+export function confirmedOf(confirmedAt: string | null): string {
+  if (confirmedAt === null) throw new Error('A signature needs a contract with `confirm`.');
+  return confirmedAt;
 }
 
 /** Ties an action to its contract. */
 export function action<const C extends ContractShape>(
   contract: C,
   run: (input: ActionInput<C>, tx: Tx) => Promise<AnswerOf<C> | Refusal>,
+  more: Pick<Action<C>, 'scope'> = {},
 ): Action<C> {
-  return { contract, run };
+  return { contract, run, ...more };
 }
 
 /**

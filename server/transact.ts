@@ -2,7 +2,7 @@
 // nothing over the network: what must be sent is kept and sent after the commit.
 
 import { createHash, randomUUID } from 'node:crypto';
-import type { Client, Db, Execute } from '@/db/client';
+import type { Client, Db, Execute, Scope } from '@/db/client';
 import { sqlStateOf } from '@/db/sql-state';
 import { appendAudit, type AuditContent } from '@/db/queries/audit';
 import { findKeySeen, insertKeySeen, insertOutbox, lockName, tryLockName } from '@/db/queries/house';
@@ -30,7 +30,8 @@ import { canonicalJson } from '@/shared/values/canonical';
 /** An action whose contract is not known at compile time: the mount has parsed what it is given. */
 export interface AnyAction {
   contract: ContractShape;
-  run(input: AnyInput, tx: Tx): Promise<unknown>;
+  scope?: 'house';
+  run(input: AnyInput & { confirmedAt: string | null }, tx: Tx): Promise<unknown>;
 }
 
 export interface AnyInput {
@@ -40,6 +41,8 @@ export interface AnyInput {
   body: unknown;
   key: string | null;
   file: UploadedFile | null;
+  /** When the house checked the password, where the contract asks for it. */
+  confirmedAt?: string | null;
   requestId: string;
 }
 
@@ -62,6 +65,11 @@ export interface Outside {
   wake?: (execute: Execute) => Promise<void>;
   /** The demo's clock, moved outside the transaction of the door that asks for it. */
   moveClock?: Tx['moveClock'];
+  /**
+   * For one test alone, which has the server take people for somebody else, to see what the database then refuses by itself. Nothing that
+   * starts a server sets it.
+   */
+  mistake?: (actor: AccountActor) => AccountActor;
 }
 
 /** A deadlock or a serialization failure is chance, not fault: again, this often (own choice). */
@@ -85,12 +93,13 @@ export function makeTransact(client: Client, env: Env, outside: Outside = {}): T
 
   /** One transaction: what `work` collects is written last, audit heads last of all. */
   async function transaction<T>(
+    scope: Scope,
     actor: Actor,
     actionName: string,
     requestId: string | null,
     work: (tx: Tx) => Promise<T>,
   ): Promise<T> {
-    return client.transaction(async (db, execute) => {
+    return client.transaction(scope, async (db, execute) => {
       let moment: string | undefined;
       const collected: Collected = { entries: [], messages: [] };
       const now = async () => (moment ??= await houseNow(db, env.isDemo));
@@ -134,15 +143,18 @@ export function makeTransact(client: Client, env: Env, outside: Outside = {}): T
     requestId: string | null,
     work: (tx: Tx) => Promise<void> | void,
   ): Promise<void> {
-    return again(() => transaction(actor, action, requestId, async (tx) => work(tx)));
+    return again(() => transaction('house', actor, action, requestId, async (tx) => work(tx)));
   }
 
-  async function run(action: AnyAction, input: AnyInput): Promise<Outcome> {
+  async function run(action: AnyAction, asked: AnyInput): Promise<Outcome> {
     const { contract } = action;
-    const { actor, requestId } = input;
+    const { requestId } = asked;
+    const scope = scopeOf(action, asked.actor);
+    const actor = outside.mistake && asked.actor.kind === 'account' ? outside.mistake(asked.actor) : asked.actor;
+    const input = { ...asked, actor, confirmedAt: asked.confirmedAt ?? null };
     try {
       const answer = await again(() =>
-        transaction(actor, contract.name, requestId, async (tx) => {
+        transaction(scope, actor, contract.name, requestId, async (tx) => {
           const seen = await openKey(tx, contract, input);
           if (seen && 'stored' in seen) return seen.stored;
           const result = await action.run(input, tx);
@@ -174,13 +186,20 @@ export function makeTransact(client: Client, env: Env, outside: Outside = {}): T
     now: () => houseNow(client.db, env.isDemo),
     job: (job, id) =>
       again(() =>
-        transaction({ kind: 'system', job: job.name }, job.name, null, async (tx) => {
+        transaction('house', { kind: 'system', job: job.name }, job.name, null, async (tx) => {
           if (!(await tryLockName(tx.db, `job:${job.name}:${id}`))) return false;
           await job.run(id, tx);
           return true;
         }),
       ),
   };
+}
+
+/** Doors for anyone have their authority elsewhere: a link from a mail, or nothing to protect. */
+function scopeOf({ scope, contract }: AnyAction, actor: AccountActor | AnyoneActor): Scope {
+  if (scope === 'house' || actor.kind === 'anyone' || contract.who.includes('anyone')) return 'house';
+  const { accountId, role, siteIds, participantId } = actor;
+  return { accountId, role, siteIds, participantId };
 }
 
 /** False where the action answers a repeated key itself (a permit with its present state). */

@@ -136,6 +136,11 @@ function recordOf(row: typeof prescription.$inferSelect): PrescriptionRecord {
   };
 }
 
+/** What of a row was signed; null where it cannot even be read as a prescription. */
+export function contentOf(row: typeof prescription.$inferSelect): PrescriptionContent | null {
+  return storedElectrodes.safeParse(row.electrodes).success ? recordOf(row) : null;
+}
+
 export type NewPrescription = Omit<PrescriptionRecord, 'version' | 'signedAt' | 'closedAt' | 'closedWhy'>;
 
 /** A draft. The database's own ceilings refuse what no rule should have let through. */

@@ -15,16 +15,25 @@ export interface Reacher {
 export type ParticipantRecord = typeof participant.$inferSelect;
 
 /** The participant if this actor is that participant, or staff who keep records at that site; else null. */
-export async function findParticipantInReach(db: Db, actor: Reacher, participantId: string): Promise<ParticipantRecord | null> {
+export async function findParticipantInReach(
+  db: Db,
+  actor: Reacher,
+  participantId: string,
+): Promise<ParticipantRecord | null> {
   const [row] = await db.select().from(participant).where(eq(participant.id, participantId)).limit(1);
   if (!row) return null;
   if (actor.role === 'participant') return row.id === actor.participantId ? row : null;
-  if (actor.role === 'coordinator' || actor.role === 'clinician' || actor.role === 'monitor') return actor.siteIds.includes(row.siteId) ? row : null;
+  if (actor.role === 'coordinator' || actor.role === 'clinician' || actor.role === 'monitor')
+    return actor.siteIds.includes(row.siteId) ? row : null;
   return null;
 }
 
 /** The participant for staff of an own site, locked against simultaneous change. */
-export async function lockParticipantInReach(db: Db, actor: Reacher, participantId: string): Promise<ParticipantRecord | null> {
+export async function lockParticipantInReach(
+  db: Db,
+  actor: Reacher,
+  participantId: string,
+): Promise<ParticipantRecord | null> {
   const found = await findParticipantInReach(db, actor, participantId);
   if (!found) return null;
   const [row] = await db.select().from(participant).where(eq(participant.id, participantId)).for('update');
@@ -43,7 +52,9 @@ export async function findCaregiverLink(db: Db, accountId: string, participantId
   const [row] = await db
     .select()
     .from(caregiver)
-    .where(and(eq(caregiver.accountId, accountId), eq(caregiver.participantId, participantId), isNull(caregiver.closedAt)))
+    .where(
+      and(eq(caregiver.accountId, accountId), eq(caregiver.participantId, participantId), isNull(caregiver.closedAt)),
+    )
     .limit(1);
   return row ?? null;
 }

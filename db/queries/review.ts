@@ -1,8 +1,10 @@
 // Reviews: the signed looks at rows of the worklist, and the lockout that a row is about. Added, never changed.
 
-import { and, desc, eq, isNull, lt, or, type SQL } from 'drizzle-orm';
+import { and, desc, eq, isNull, lt, or, sql, type SQL } from 'drizzle-orm';
 import { z } from 'zod';
 import type { Db } from '@/db/client';
+import { isIntact, reviewHashOf } from '@/db/queries/content-hash';
+import { signature } from '@/db/schema/course';
 import { lockout, review, worklistItem } from '@/db/schema/session';
 
 const storedGrading = z.object({
@@ -22,6 +24,8 @@ export interface ReviewRecord {
   decision: 'lift' | 'keep' | 'noted' | 'done';
   reason: string;
   grading: StoredGrading | null;
+  /** False: it is not what was signed. */
+  isIntact: boolean;
 }
 
 export interface NewReview {
@@ -62,13 +66,22 @@ export async function listReviews(
       decision: review.decision,
       reason: review.reason,
       grading: review.grading,
+      itemId: review.itemId,
+      contentHash: review.contentHash,
+      signed: sql<
+        string[]
+      >`coalesce((select array_agg(g.content_hash) from ${signature} g where g.subject_id = ${review.id}), '{}')`,
     })
     .from(review)
     .innerJoin(worklistItem, eq(worklistItem.id, review.itemId))
     .where(and(...conditions))
     .orderBy(desc(review.createdAt), desc(review.id))
     .limit(want.limit);
-  return rows.map((row) => ({ ...row, grading: row.grading === null ? null : storedGrading.parse(row.grading) }));
+  return rows.map(({ itemId, contentHash, signed, ...row }) => {
+    const grading = row.grading === null ? null : storedGrading.parse(row.grading);
+    const computed = reviewHashOf({ ...row, itemId, grading });
+    return { ...row, grading, isIntact: isIntact(true, computed, contentHash, signed) };
+  });
 }
 
 export interface LockoutOfItem {

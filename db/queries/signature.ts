@@ -29,6 +29,8 @@ export interface NewSignature {
   meaning: SignatureMeaning;
   contentHash: string;
   createdAt: string;
+  /** When the house checked the password for this very signature. */
+  confirmedAt: string;
 }
 
 /** False when this meaning, or for a prescription this person, has signed already. */

@@ -2,7 +2,19 @@
 // A signed prescription never changes. The published ceilings stand here as CHECK constraints too, from the same constants.
 
 import { sql } from 'drizzle-orm';
-import { bigint, boolean, check, date, index, integer, jsonb, pgTable, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core';
+import {
+  bigint,
+  boolean,
+  check,
+  date,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  text,
+  uniqueIndex,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { ceilings } from '@/shared/rules/ceilings';
 import { closing, id, instant, oneOf } from './columns';
 import { participant } from './participant';
@@ -22,7 +34,12 @@ export const course = pgTable(
     /** finished, withdrawn. */
     ...closing(),
   },
-  (table) => [uniqueIndex('course_one_active').on(table.participantId).where(sql`${table.closedAt} is null`), index('course_participant').on(table.participantId, table.createdAt.desc())],
+  (table) => [
+    uniqueIndex('course_one_active')
+      .on(table.participantId)
+      .where(sql`${table.closedAt} is null`),
+    index('course_participant').on(table.participantId, table.createdAt.desc()),
+  ],
 );
 
 export const coursePause = pgTable(
@@ -37,7 +54,11 @@ export const coursePause = pgTable(
     createdAt: instant('created_at').notNull(),
     ...closing(),
   },
-  (table) => [uniqueIndex('course_pause_one_open').on(table.courseId).where(sql`${table.closedAt} is null`)],
+  (table) => [
+    uniqueIndex('course_pause_one_open')
+      .on(table.courseId)
+      .where(sql`${table.closedAt} is null`),
+  ],
 );
 
 const microampCeiling = sql.raw(String(Math.round(ceilings.currentMilliamp.value * 1000)));
@@ -94,21 +115,37 @@ export const prescription = pgTable(
     ...closing(),
   },
   (table) => [
-    uniqueIndex('prescription_version').on(table.courseId, table.version).where(sql`${table.version} is not null`),
-    uniqueIndex('prescription_one_in_force').on(table.courseId).where(sql`${table.signedAt} is not null and ${table.closedAt} is null`),
+    uniqueIndex('prescription_version')
+      .on(table.courseId, table.version)
+      .where(sql`${table.version} is not null`),
+    uniqueIndex('prescription_one_in_force')
+      .on(table.courseId)
+      .where(sql`${table.signedAt} is not null and ${table.closedAt} is null`),
     index('prescription_participant').on(table.participantId, table.createdAt.desc()),
-    check('prescription_intensity_ceiling', sql`${table.intensityUa} > 0 and ${table.intensityUa} <= ${microampCeiling}`),
+    check(
+      'prescription_intensity_ceiling',
+      sql`${table.intensityUa} > 0 and ${table.intensityUa} <= ${microampCeiling}`,
+    ),
     check('prescription_minutes_ceiling', sql`${table.onMs} > 0 and ${table.onMs} <= ${msCeiling}`),
     check('prescription_charge_ceiling', sql`${table.chargeUc} > 0 and ${table.chargeUc} <= ${microcoulombCeiling}`),
     check('prescription_ramp_up_bounds', sql`${table.rampUpMs} between ${rampMsMin} and ${rampMsMax}`),
     check('prescription_ramp_down_bounds', sql`${table.rampDownMs} between ${rampMsMin} and ${rampMsMax}`),
-    check('prescription_day_ceiling', sql`${table.maxPerDay} >= 1 and ${table.maxPerDay}::bigint * ${table.onMs} <= ${msADayCeiling}`),
+    check(
+      'prescription_day_ceiling',
+      sql`${table.maxPerDay} >= 1 and ${table.maxPerDay}::bigint * ${table.onMs} <= ${msADayCeiling}`,
+    ),
     check('prescription_gap_floor', sql`${table.minGapMs} >= ${gapMsMin}`),
     // The function stands in migration 0002: a CHECK cannot look into a list by itself. Nothing readable is no density, and refused.
-    check('prescription_density_ceiling', sql`coalesce(worst_density(${table.intensityUa}, ${table.electrodes}) <= ${densityCeiling}, false)`),
+    check(
+      'prescription_density_ceiling',
+      sql`coalesce(worst_density(${table.intensityUa}, ${table.electrodes}) <= ${densityCeiling}, false)`,
+    ),
     check('prescription_whole_time', sql`${table.onMs} = ${table.rampUpMs} + ${table.holdMs} + ${table.rampDownMs}`),
     // µA times ms are nC, and a ramp counts half: the amount that limits are judged by cannot be less than the curve gives.
-    check('prescription_whole_charge', sql`${table.waveform} <> 'tDCS' or ${table.chargeUc} * 2000 >= ${table.intensityUa}::bigint * (2 * ${table.holdMs}::bigint + ${table.rampUpMs} + ${table.rampDownMs})`),
+    check(
+      'prescription_whole_charge',
+      sql`${table.waveform} <> 'tDCS' or ${table.chargeUc} * 2000 >= ${table.intensityUa}::bigint * (2 * ${table.holdMs}::bigint + ${table.rampUpMs} + ${table.rampDownMs})`,
+    ),
     check('prescription_hold', sql`${table.holdMs} >= 0`),
     check('prescription_sessions', sql`${table.sessionsTotal} between 1 and 200`),
     check('prescription_signed_has_version', sql`(${table.signedAt} is null) = (${table.version} is null)`),
@@ -128,11 +165,19 @@ export const signature = pgTable(
     meaning: text('meaning', { enum: ['prescribed', 'second_signature', 'reviewed', 'graded', 'protocol'] }).notNull(),
     contentHash: text('content_hash').notNull(),
     createdAt: instant('created_at').notNull(),
+    /** When the password was asked for again: within 5 minutes before the signature (OWASP ASVS 7.5.3 asks for it; the minutes are an own choice). */
+    confirmedAt: instant('confirmed_at').notNull(),
   },
   (table) => [
+    check(
+      'signature_confirmed',
+      sql`${table.confirmedAt} between ${table.createdAt} - interval '5 minutes' and ${table.createdAt}`,
+    ),
     index('signature_subject').on(table.subjectId, table.createdAt),
     // One person in two roles is one signature; a review that grades carries two meanings of the same person.
-    uniqueIndex('signature_once_a_person').on(table.subjectId, table.accountId).where(sql`${table.subjectKind} = 'prescription'`),
+    uniqueIndex('signature_once_a_person')
+      .on(table.subjectId, table.accountId)
+      .where(sql`${table.subjectKind} = 'prescription'`),
     uniqueIndex('signature_once_a_meaning').on(table.subjectId, table.meaning),
   ],
 );
@@ -174,8 +219,13 @@ export const plannedSession = pgTable(
   },
   (table) => [
     index('planned_session_course').on(table.courseId, table.windowFrom),
-    index('planned_session_due').on(table.windowTo).where(sql`${table.closedAt} is null`),
+    index('planned_session_due')
+      .on(table.windowTo)
+      .where(sql`${table.closedAt} is null`),
     check('planned_session_window', sql`${table.windowTo} > ${table.windowFrom}`),
-    check('planned_session_closed_why', sql.raw(`closed_why is null or closed_why in ('done', 'missed', 'excused', 'cancelled', 'moved')`)),
+    check(
+      'planned_session_closed_why',
+      sql.raw(`closed_why is null or closed_why in ('done', 'missed', 'excused', 'cancelled', 'moved')`),
+    ),
   ],
 );

@@ -55,6 +55,8 @@ export async function act<T>(
     body: contract.body?.parse(wish.body ?? {}),
     key: wish.key ?? null,
     file: wish.file ?? null,
+    // The demo's people know their passwords.
+    confirmedAt: contract.confirm ? await transact.now() : null,
     requestId: randomUUID(),
   });
   if (refusal) throw new DemoRefused(contract.name, refusal.code, refusal.fields ?? refusal.reasons ?? refusal.facts);

@@ -34,6 +34,8 @@ export interface HouseParts {
   /** Where mails go; without one they wait in the outbox. */
   transport?: Transport | undefined;
   wake?: Outside['wake'];
+  /** For one test alone; see `Outside`. */
+  mistake?: Outside['mistake'];
   log?: Logger;
   /** The database, when somebody opened it already. */
   client?: Client;
@@ -49,6 +51,7 @@ export function openHouse(env: Env, parts: HouseParts = {}): House {
   const late: { runner?: Runner } = {};
   const transact = makeTransact(client, env, {
     wake: parts.wake,
+    mistake: parts.mistake,
     moveClock: env.isDemo ? (seconds) => runnerOf(late).moveClock(seconds) : undefined,
   });
   const auth = makeAuth(client, env, transact);

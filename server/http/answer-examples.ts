@@ -41,7 +41,7 @@ const draft = {
       ...{ layer: 'site', source: 'own choice', fact: null },
     },
   ],
-  ...{ contentHash, createdAt: hour('09:10'), signedAt: null, acknowledgedAt: null, livePermits: 0 },
+  ...{ contentHash, isIntact: true, createdAt: hour('09:10'), signedAt: null, acknowledgedAt: null, livePermits: 0 },
 };
 
 const examples: Examples = {

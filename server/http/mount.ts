@@ -77,6 +77,7 @@ async function answer(action: AnyAction, request: Request, response: Response, n
   if ('problem' in read) return refused(read.problem);
   const wrong = await confirmProblem(contract, actor, read.body, needs);
   if (wrong) return refused(wrong);
+  const confirmedAt = contract.confirm ? await transact.now() : null;
 
   const { params, query, body, key, file } = read;
   const outcome = await transact.run(action, {
@@ -86,6 +87,7 @@ async function answer(action: AnyAction, request: Request, response: Response, n
     body,
     key,
     file,
+    confirmedAt,
     requestId: requestIdOf(request),
   });
   if (outcome.refusal) {

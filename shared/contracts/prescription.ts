@@ -1,7 +1,19 @@
 // Writing, signing, amending and acknowledging a prescription. Shape here; every limit is judged by shared/rules/dose.ts.
 
 import { z } from 'zod';
-import { Instant, LocalDate, LocalTime, Milliamp, Paragraph, PasswordAgain, Seconds, Uuid, Weekday, pageOf, pageQuery } from '@/shared/values/primitives';
+import {
+  Instant,
+  LocalDate,
+  LocalTime,
+  Milliamp,
+  Paragraph,
+  PasswordAgain,
+  Seconds,
+  Uuid,
+  Weekday,
+  pageOf,
+  pageQuery,
+} from '@/shared/values/primitives';
 import { contract } from './contract';
 
 export const ElectrodeBody = z.strictObject({
@@ -80,6 +92,8 @@ export const PrescriptionView = z.strictObject({
   rows: z.array(LimitRow),
   signatures: z.array(SignatureView),
   contentHash: z.string(),
+  /** False: the content is not what was signed. It counts as unsigned, whatever its status says. */
+  isIntact: z.boolean(),
   createdAt: Instant,
   signedAt: Instant.nullable(),
   acknowledgedAt: Instant.nullable(),
@@ -118,9 +132,16 @@ export const writePrescription = contract({
   }),
   answer: PrescriptionView,
   status: 201,
-  refusals: ['prescription.over_limit', 'prescription.schedule', 'prescription.reason_missing', 'version.stale', 'participant.withdrawn'],
+  refusals: [
+    'prescription.over_limit',
+    'prescription.schedule',
+    'prescription.reason_missing',
+    'version.stale',
+    'participant.withdrawn',
+  ],
   touches: ['prescription', 'participant'],
-  about: 'Writes a draft. A dose above a limit is refused with the row, the limit, its layer and its source; nothing is clamped.',
+  about:
+    'Writes a draft. A dose above a limit is refused with the row, the limit, its layer and its source; nothing is clamped.',
   example: {
     body: {
       participantId: '5c3d8a52-7f4e-4b0e-9a57-3f1d2b7c9e10',
@@ -185,9 +206,18 @@ export const signPrescription = contract({
     password: PasswordAgain,
   }),
   answer: PrescriptionView,
-  refusals: ['version.stale', 'prescription.over_limit', 'prescription.schedule', 'prescription.already_signed', 'prescription.same_signer', 'prescription.not_awaiting', 'participant.withdrawn'],
+  refusals: [
+    'version.stale',
+    'prescription.over_limit',
+    'prescription.schedule',
+    'prescription.already_signed',
+    'prescription.same_signer',
+    'prescription.not_awaiting',
+    'participant.withdrawn',
+  ],
   touches: ['prescription', 'participant', 'course', 'clearance', 'permit', 'worklist'],
-  about: 'Signs with the password again. It takes effect with its last needed signature: a live permit is void at once.',
+  about:
+    'Signs with the password again. It takes effect with its last needed signature: a live permit is void at once.',
   example: { body: { contentHash: '0'.repeat(64), meaning: 'prescribed', password: 'the password again' } },
 });
 

@@ -120,6 +120,8 @@ export const listReviews = contract({
       decision: z.enum(reviewDecisions),
       reason: z.string(),
       grading: Grading.nullable(),
+      /** False: it is not what was signed. */
+      isIntact: z.boolean(),
     }),
   ),
   about: 'Reviews of a participant, newest first.',

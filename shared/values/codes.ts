@@ -17,6 +17,7 @@ export const reasonCodes = [
   'supervision_due',
   'mood_check_due',
   'prescription_unsigned',
+  'prescription_altered',
   'second_signature_missing',
   'dose_above_limit',
   'prescription_paused',

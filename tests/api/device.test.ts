@@ -11,6 +11,7 @@ import { withdrawParticipant } from '@/server/features/participant/withdraw-part
 import { giveSupply } from '@/server/features/supply/give-supply';
 import { listSupplies } from '@/server/features/supply/list-supplies';
 import { localDate } from '@/shared/values/zone';
+import { pastTheGuards } from '../support/postgres';
 import { openClinic, type Clinic, type Patient } from '../support/clinic';
 import { inForce } from '../support/prescribing';
 import { newDevice } from '../support/records';
@@ -96,9 +97,10 @@ describe('a stimulator', () => {
     await clinic.call(coordinator, assignDevice, hand(device.id, patient));
     await inForce(clinic, clinician, patient);
     const { permitId } = await givePermit(clinic, patient);
-    await clinic.client.pool.query('alter table permit disable trigger append_only');
-    await clinic.client.pool.query('update permit set device_id = $1 where id = $2', [device.id, permitId]);
-    await clinic.client.pool.query('alter table permit enable trigger append_only');
+    await pastTheGuards(clinic.client, async (client) => {
+      await client.query('set session_replication_role = replica');
+      await client.query('update permit set device_id = $1 where id = $2', [device.id, permitId]);
+    });
     const recalled = await clinic.call(coordinator, changeDeviceState, change(device.id, 'recalled'));
     expect(recalled).toMatchObject({
       state: 'recalled',

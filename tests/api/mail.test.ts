@@ -5,6 +5,7 @@ import { setOffset } from '@/db/queries/clock';
 import { renderMail } from '@/server/mail/render-mail';
 import { outboxKinds, type OutboxKind } from '@/shared/values/outbox-kinds';
 import { openTestHouse, type TestHouse } from '../support/house';
+import { pastTheGuards } from '../support/postgres';
 
 let at: TestHouse;
 beforeAll(async () => {
@@ -15,7 +16,7 @@ beforeEach(async () => {
   at.mails.length = 0;
   at.mailFault.error = null;
   await setOffset(at.house.client.db, 0);
-  await at.rows('delete from outbox');
+  await pastTheGuards(at.house.client, (client) => client.query('delete from outbox'));
 });
 
 const facts = {

@@ -113,6 +113,12 @@ export const cases: Readonly<Record<Exclude<ReasonCode, 'unknown_fact'>, Cases>>
     missing: { prescription: { status: undefined } },
     fact: 'prescription.status',
   },
+  prescription_altered: {
+    fires: { prescription: { isIntact: false } },
+    misses: { prescription: { isIntact: true } },
+    missing: { prescription: { isIntact: undefined } },
+    fact: 'prescription.intact',
+  },
   second_signature_missing: {
     fires: { prescription: { tier: 'second_signature' } },
     misses: { prescription: { tier: 'second_signature', hasSecondSignature: true } },

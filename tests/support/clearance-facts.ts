@@ -25,6 +25,7 @@ export const clearedFacts: ClearanceFacts = {
     status: 'signed',
     version: 2,
     acknowledgedVersion: 2,
+    isIntact: true,
     isPaused: false,
     expiresAt: '2026-11-30T23:00:00Z',
     tier: 'accept',

@@ -87,6 +87,7 @@ export async function openClinic(): Promise<Clinic> {
       body,
       key: given.key ?? null,
       file: null,
+      confirmedAt: contract.confirm ? await transact.now() : null,
       requestId: randomUUID(),
     });
   }

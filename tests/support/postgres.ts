@@ -27,6 +27,14 @@ export async function asSuperuser<T>(work: (client: Client) => Promise<T>, datab
   }
 }
 
+/** In the database that a client is connected to, as the superuser: what neither the server nor the owner may do. */
+export function pastTheGuards<T>(
+  { pool }: { pool: { options: { connectionString?: string | undefined } } },
+  work: (client: Client) => Promise<T>,
+): Promise<T> {
+  return asSuperuser(work, pool.options.connectionString?.split('/').at(-1));
+}
+
 let made = 0;
 
 /** A new database from the template (or from another one that nobody is connected to); answers with its name. */

@@ -66,6 +66,7 @@ export const recorded: Gathered = {
     isConsentWithdrawn: false,
     watched: 1,
     isWatchedNow: false,
+    isPrescriptionIntact: true,
     hasSecondSignature: true,
     acknowledgedVersion: 2,
     sessionsDone: 4,

@@ -6,7 +6,7 @@ import { closeCaregiver } from '@/db/queries/caregiver';
 import { beat } from '@/db/queries/house';
 import type { AccountActor } from '@/server/action';
 import { readEnv } from '@/server/env';
-import { createHouse } from '@/server/house/open-house';
+import { createHouse, type HouseParts } from '@/server/house/open-house';
 import { hashSecret } from '@/server/password';
 import { withdrawParticipant } from '@/server/features/participant/withdraw-participant';
 import { changeShares } from '@/server/features/caregiver/change-shares';
@@ -80,7 +80,8 @@ export interface World {
   close(): Promise<void>;
 }
 
-export async function openWorld(): Promise<World> {
+/** @param parts of the house that serves it, for the one test that deceives it */
+export async function openWorld(parts: Pick<HouseParts, 'mistake'> = {}): Promise<World> {
   const clinic = await openClinic();
   await goToMorning(clinic);
   const siteId = await clinic.site('LS');
@@ -141,7 +142,7 @@ export async function openWorld(): Promise<World> {
     ...{ DATABASE_URL: clinic.client.pool.options.connectionString ?? '', DEMO: '1', SECRET: secretOfTests },
     ...{ BASE_URL: origin, LOG_LEVEL: 'silent' },
   });
-  const house = createHouse(env);
+  const house = createHouse(env, parts);
   const server = createServer(house.app);
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   const signedIn = new Map<Who, Promise<Browser>>();

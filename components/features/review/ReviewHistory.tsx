@@ -7,6 +7,7 @@ import { usePages } from '@/components/runtime/api';
 import { useFormat } from '@/components/runtime/format';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
+import { Notice } from '@/components/ui/Notice';
 import { FailedState, LoadingState } from '@/components/ui/States';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
@@ -28,17 +29,27 @@ export function ReviewHistory({ participantId }: { participantId: string }) {
             <Text size="small" tone="muted">
               {t('history.head', { by: review.by, at: format.dayTime(review.at) })}
             </Text>
+            {review.isIntact ? null : (
+              <Notice tone="stop" title={t('history.notValid')}>
+                {t('history.notValidHelp')}
+              </Notice>
+            )}
             <Text weight="bold">{t(`decision.${review.decision}`)}</Text>
             <Text>{review.finding}</Text>
             <Text tone="muted">{review.reason}</Text>
             {review.grading ? (
               <Text size="small">
-                {t('history.grading', { severity: t(`grading.severities.${review.grading.severity}`), causality: t(`grading.causalities.${review.grading.causality}`) })}
+                {t('history.grading', {
+                  severity: t(`grading.severities.${review.grading.severity}`),
+                  causality: t(`grading.causalities.${review.grading.causality}`),
+                })}
               </Text>
             ) : null}
           </View>
         ))}
-        {list.hasNextPage ? <Button kind="quiet" label={t('history.older')} onPress={() => void list.fetchNextPage()} /> : null}
+        {list.hasNextPage ? (
+          <Button kind="quiet" label={t('history.older')} onPress={() => void list.fetchNextPage()} />
+        ) : null}
       </View>
     </Card>
   );

@@ -9,7 +9,9 @@ import { device, deviceAssignment, deviceState } from '@/db/schema/device';
 import { consent, participant, screening, training, watchedSession } from '@/db/schema/participant';
 import { permit, precheck, review, session, worklistItem } from '@/db/schema/session';
 import { site } from '@/db/schema/site';
+import { isIntact, prescriptionHashOf } from '../content-hash';
 import { recallMatter } from '../course';
+import { contentOf } from '../prescription';
 
 /** The newest of a person's consents of a kind that is not withdrawn. */
 function consentVersion(kind: 'own' | 'guardian' | 'assent') {
@@ -59,6 +61,9 @@ export async function loadPerson(db: Db, participantId: string, now: string, pre
         where c.participant_id = ${participant.id} and c.kind = 'own' order by c.created_at desc, c.id desc limit 1), false)`,
       watched: sql<number>`(select count(*)::int from ${watchedSession} w where w.participant_id = ${participant.id} and w.until is null)`,
       isWatchedNow: sql<boolean>`exists (select 1 from ${watchedSession} w where w.participant_id = ${participant.id} and w.until > ${now})`,
+      signedHashes: sql<
+        string[]
+      >`coalesce((select array_agg(g.content_hash) from ${signature} g where g.subject_id = ${prescription.id}), '{}')`,
       hasSecondSignature: sql<boolean>`exists (select 1 from ${signature} g where g.subject_id = ${prescription.id} and g.meaning = 'second_signature')`,
       acknowledgedVersion: sql<number>`coalesce((select max(p.version) from ${prescription} p
         join ${acknowledgement} k on k.prescription_id = p.id where p.course_id = ${course.id}), 0)`,
@@ -99,7 +104,16 @@ export async function loadPerson(db: Db, participantId: string, now: string, pre
     .leftJoin(precheck, eq(precheck.id, precheckOf(precheckId)))
     .leftJoin(permit, and(eq(permit.participantId, participant.id), isNull(permit.closedAt)))
     .where(eq(participant.id, participantId));
-  return row ?? null;
+  if (!row) return null;
+  const { signedHashes, ...person } = row;
+  return { ...person, isPrescriptionIntact: isPrescriptionIntact(row.prescription, signedHashes) };
+}
+
+/** What cannot be read is not intact. */
+function isPrescriptionIntact(row: typeof prescription.$inferSelect | null, signed: readonly string[]): boolean {
+  if (row === null) return false;
+  const content = contentOf(row);
+  return content !== null && isIntact(row.signedAt !== null, prescriptionHashOf(content), row.contentHash, signed);
 }
 
 export type PersonRow = NonNullable<Awaited<ReturnType<typeof loadPerson>>>;

@@ -1,13 +1,13 @@
 // A clinician signs, the password checked again by the house. Limits and schedule are judged once more by what holds now;
 // with its last needed signature the version is in force.
 
+import { prescriptionHashOf } from '@/db/queries/content-hash';
 import { lockCourse } from '@/db/queries/course-state';
 import { findPrescription, findPrescriptionInForce } from '@/db/queries/prescription';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { insertSignature, listSignatures } from '@/db/queries/signature';
-import { action, notFound, refuse } from '@/server/action';
+import { action, confirmedOf, notFound, refuse } from '@/server/action';
 import { askSecondSignature } from '@/server/features/prescription/ask-second-signature';
-import { contentHashOf } from '@/server/features/prescription/content-hash';
 import { judgeContent, refusalOf } from '@/server/features/prescription/judge-content';
 import { putInForce } from '@/server/features/prescription/put-in-force';
 import { viewPrescription } from '@/server/features/prescription/view-prescription';
@@ -15,7 +15,7 @@ import { signPrescription as contract } from '@/shared/contracts/prescription';
 import { worstTier } from '@/shared/rules/dose';
 import { signing } from '@/shared/rules/prescription-signing';
 
-export const signPrescription = action(contract, async ({ actor, params, body }, tx) => {
+export const signPrescription = action(contract, async ({ actor, params, body, confirmedAt }, tx) => {
   const found = await findPrescription(tx.db, params.prescriptionId);
   const participant = found && (await lockParticipantInReach(tx.db, actor, found.participantId));
   const course = found && participant && (await lockCourse(tx.db, found.courseId));
@@ -40,7 +40,7 @@ export const signPrescription = action(contract, async ({ actor, params, body },
       inForceId: inForce?.id ?? null,
       isParticipantWithdrawn: participant.closedAt !== null,
       isCourseClosed: course.closedAt !== null,
-      isSameContent: body.contentHash === draft.contentHash && draft.contentHash === contentHashOf(draft),
+      isSameContent: body.contentHash === draft.contentHash && draft.contentHash === prescriptionHashOf(draft),
       tier: worstTier([draft.tier, judged.judgement.verdict]),
       signatures: (await listSignatures(tx.db, [draft.id])).get(draft.id) ?? [],
     },
@@ -61,6 +61,7 @@ export const signPrescription = action(contract, async ({ actor, params, body },
     meaning: body.meaning,
     contentHash: draft.contentHash,
     createdAt: now,
+    confirmedAt: confirmedOf(confirmedAt),
   };
   await insertSignature(tx.db, { ...signed, subjectKind: 'prescription', subjectId: draft.id });
   const effect = answer.takesEffect ? await putInForce(tx, participant, draft, inForce, judged.takenDays, now) : null;

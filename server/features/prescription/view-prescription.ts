@@ -1,11 +1,11 @@
 // Prescriptions as their readers see them: content, the limits that it uses as they stand now, signatures, acknowledgement.
 // A participant sees signed versions; a pseudonymous reader no person's own words. Changes nothing.
 
+import { isIntact, prescriptionHashOf } from '@/db/queries/content-hash';
 import type { Db } from '@/db/client';
 import { countLivePermits, listAcknowledgements, type PrescriptionRecord } from '@/db/queries/prescription';
 import type { ParticipantRecord } from '@/db/queries/reach';
 import { listSignatures, type SignatureRecord } from '@/db/queries/signature';
-import { contentHashOf } from '@/server/features/prescription/content-hash';
 import { judgeFor, limitsInForce } from '@/server/features/prescription/judge-content';
 import type { LimitRow, PrescriptionView } from '@/shared/contracts/prescription';
 import { densityOf, type DoseRow } from '@/shared/rules/dose';
@@ -53,6 +53,7 @@ export async function viewPrescriptions(
     const signed = signatures.get(record.id) ?? [];
     const judgement = judgeFor(record, participant, limits, now);
     const { dose } = record;
+    const contentHash = prescriptionHashOf(record);
     return {
       id: record.id,
       courseId: record.courseId,
@@ -83,7 +84,13 @@ export async function viewPrescriptions(
         contentHash,
       })),
       // Computed anew: a signature over another content shows as one.
-      contentHash: contentHashOf(record),
+      contentHash,
+      isIntact: isIntact(
+        record.signedAt !== null,
+        contentHash,
+        record.contentHash,
+        signed.map((each) => each.contentHash),
+      ),
       createdAt: record.createdAt,
       signedAt: record.signedAt,
       acknowledgedAt: acknowledged.get(record.id) ?? null,

@@ -1,10 +1,10 @@
 // A clinician writes a draft, the first or an amendment. Refused with every limit that it crosses; nothing is clamped.
 
+import { prescriptionHashOf } from '@/db/queries/content-hash';
 import { findActiveCourse, insertCourse, lockCourse } from '@/db/queries/course-state';
 import { discardDrafts, findPrescriptionInForce, insertPrescription, wholeAmounts } from '@/db/queries/prescription';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { action, notFound, refuse } from '@/server/action';
-import { contentHashOf } from '@/server/features/prescription/content-hash';
 import { judgeContent, refusalOf } from '@/server/features/prescription/judge-content';
 import { viewPrescription } from '@/server/features/prescription/view-prescription';
 import { writePrescription as contract } from '@/shared/contracts/prescription';
@@ -42,7 +42,7 @@ export const writePrescription = action(contract, async ({ actor, body }, tx) =>
     minutes: minutesOn(content.dose),
     expiresAt: isoOf(endOfDay(content.schedule.expiresOn, participant.zone)),
     tier: judged.judgement.verdict === 'accept' ? 'accept' : 'second_signature',
-    contentHash: contentHashOf(content),
+    contentHash: prescriptionHashOf(content),
     writtenBy: actor.accountId,
     createdAt: now,
   });

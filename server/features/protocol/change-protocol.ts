@@ -1,14 +1,14 @@
 // Signs a new version of a site's protocol. No limit may exceed its ceiling; of two who sign at once, the second is told.
 
-import { createHash } from 'node:crypto';
+import { protocolHashOf } from '@/db/queries/content-hash';
 import { insertProtocol, lockProtocol, readProtocolInForce } from '@/db/queries/protocol';
+import { insertSignature } from '@/db/queries/signature';
 import { findSite } from '@/db/queries/site';
-import { action, notFound, refuse } from '@/server/action';
+import { action, confirmedOf, notFound, refuse } from '@/server/action';
 import { changeProtocol as contract } from '@/shared/contracts/site';
 import { siteLimitsAllowed } from '@/shared/rules/site-limits';
-import { canonicalJson } from '@/shared/values/canonical';
 
-export const changeProtocol = action(contract, async ({ actor, body }, tx) => {
+export const changeProtocol = action(contract, async ({ actor, body, confirmedAt }, tx) => {
   const { siteId, settings, reason } = body;
   const site = actor.siteIds.includes(siteId) ? await findSite(tx.db, siteId) : null;
   if (!site) return notFound();
@@ -33,10 +33,13 @@ export const changeProtocol = action(contract, async ({ actor, body }, tx) => {
     ...{ id: crypto.randomUUID(), siteId, version: version + 1, settings, reason },
     ...{ signedBy: actor.accountId, signedByName: actor.name, signedAt: now },
   };
-  const contentHash = createHash('sha256')
-    .update(canonicalJson({ siteId, version: signed.version, settings, reason }))
-    .digest('hex');
+  const contentHash = protocolHashOf(signed);
   if (!(await insertProtocol(tx.db, { ...signed, contentHash }))) return refuse('version.stale', { siteId });
+  await insertSignature(tx.db, {
+    ...{ id: crypto.randomUUID(), subjectKind: 'protocol', subjectId: signed.id, meaning: 'protocol', contentHash },
+    ...{ accountId: actor.accountId, name: actor.name, role: actor.role },
+    ...{ createdAt: now, confirmedAt: confirmedOf(confirmedAt) },
+  });
   tx.record({
     siteId,
     subject: { kind: 'protocol', id: signed.id },

@@ -1,18 +1,17 @@
 // A signed look at a row of the worklist: finding, decision, reason, and for a clinician the grading. Lifting ends the row's
 // lockout; no other lockout is touched.
 
-import { createHash } from 'node:crypto';
+import { reviewHashOf } from '@/db/queries/content-hash';
 import { closeLockout } from '@/db/queries/lockout';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { insertReview, lockOpenLockout } from '@/db/queries/review';
 import { insertSignature } from '@/db/queries/signature';
 import { closeItem, findItem, lockItem, setEscalation } from '@/db/queries/worklist';
-import { action, notFound, refuse } from '@/server/action';
+import { action, confirmedOf, notFound, refuse } from '@/server/action';
 import { recordReview as contract } from '@/shared/contracts/worklist';
 import { reviewing } from '@/shared/rules/review';
-import { canonicalJson } from '@/shared/values/canonical';
 
-export const recordReview = action(contract, async ({ actor, body }, tx) => {
+export const recordReview = action(contract, async ({ actor, body, confirmedAt }, tx) => {
   const found = await findItem(tx.db, body.itemId);
   const participant = found && (await lockParticipantInReach(tx.db, actor, found.participantId));
   const item = participant && (await lockItem(tx.db, body.itemId));
@@ -29,9 +28,7 @@ export const recordReview = action(contract, async ({ actor, body }, tx) => {
   if (!answer.allowed) return refuse(answer.code, whose);
 
   const id = crypto.randomUUID();
-  const contentHash = createHash('sha256')
-    .update(canonicalJson({ itemId, finding, decision, reason, grading }))
-    .digest('hex');
+  const contentHash = reviewHashOf({ itemId, finding, decision, reason, grading });
   const { accountId, name, role } = actor;
   await insertReview(tx.db, {
     id,
@@ -49,6 +46,7 @@ export const recordReview = action(contract, async ({ actor, body }, tx) => {
       meaning,
       contentHash,
       createdAt: now,
+      confirmedAt: confirmedOf(confirmedAt),
     } as const;
     await insertSignature(tx.db, { ...signed, accountId, name, role });
   }

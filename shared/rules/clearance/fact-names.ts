@@ -35,6 +35,7 @@ export const clearanceFactNames = [
   'prescription.status',
   'prescription.version',
   'prescription.acknowledged_version',
+  'prescription.intact',
   'prescription.paused',
   'prescription.expires_at',
   'prescription.tier',

@@ -59,6 +59,8 @@ export type PrescriptionFacts = {
   readonly version?: number;
   /** 0 = no version yet. */
   readonly acknowledgedVersion?: number;
+  /** Its content is what was signed: the hash of every signature on it is the hash of what stands there. */
+  readonly isIntact?: boolean;
   readonly isPaused?: boolean;
   readonly expiresAt?: string;
   /** The worse of the tier at signing and the tier by the limits in force now. */

@@ -69,6 +69,7 @@ export type Gathered = {
     readonly isConsentWithdrawn: boolean;
     readonly watched: number;
     readonly isWatchedNow: boolean;
+    readonly isPrescriptionIntact: boolean;
     readonly hasSecondSignature: boolean;
     readonly acknowledgedVersion: number;
     readonly sessionsDone: number;
@@ -114,6 +115,7 @@ function prescriptionOf(gathered: Gathered, now: string): PrescriptionFacts {
     status: prescription.signedAt === null ? 'draft' : 'signed',
     version: prescription.version ?? 0,
     acknowledgedVersion: person.acknowledgedVersion,
+    isIntact: person.isPrescriptionIntact,
     isPaused: person.pauseId !== null,
     expiresAt: prescription.expiresAt,
     ...doseNow(prescription, ageOf(gathered, now), protocol?.settings.limits),

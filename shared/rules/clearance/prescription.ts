@@ -23,6 +23,7 @@ export function prescriptionReasons({ facts, known, now }: ClearanceContext): Re
   // A tier of `refuse` cannot be signed; if it stands there, the fact cannot be meant.
   const tier = known.word('prescription.tier', prescription?.tier, ['accept', 'second_signature']);
   const hasSecond = known.flag('prescription.second_signature', prescription?.hasSecondSignature);
+  const isIntact = known.flag('prescription.intact', prescription?.isIntact);
   const isPaused = known.flag('prescription.paused', prescription?.isPaused);
   const expiresAt = known.instant('prescription.expires_at', prescription?.expiresAt);
   const version = known.amount('prescription.version', prescription?.version);
@@ -30,6 +31,7 @@ export function prescriptionReasons({ facts, known, now }: ClearanceContext): Re
   const isBehind = version !== undefined && acknowledged !== undefined && version > acknowledged;
   return [
     ...when(status === 'draft', 'prescription_unsigned'),
+    ...when(isIntact === false, 'prescription_altered'),
     ...when(tier === 'second_signature' && hasSecond === false, 'second_signature_missing'),
     ...overLimitReasons(prescription?.overLimits ?? [], known),
     ...when(isPaused === true, 'prescription_paused'),

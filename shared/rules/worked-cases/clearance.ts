@@ -79,6 +79,8 @@ function prescriptionOf(given: NonNullable<Given['prescription']>): ClearanceFac
     status: given.status,
     version: given.version,
     acknowledgedVersion: given.acknowledged_version,
+    // A case states what was signed; there is nothing beside it that it could differ from.
+    isIntact: true,
     isPaused: given.paused,
     expiresAt: given.expires_at,
     tier: given.tier,
