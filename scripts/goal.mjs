@@ -9,7 +9,7 @@ import { end, main, Plainly } from './ground/processes.mjs';
 
 const folder = path.join(root, 'scripts', 'goals');
 const ids = readdirSync(folder)
-  .map((name) => /^([A-Z]\d+)\.mjs$/.exec(name)?.[1])
+  .map((name) => /^([A-Z]\d+|[a-z]+)\.mjs$/.exec(name)?.[1])
   .filter((id) => id !== undefined)
   .sort((a, b) => a.localeCompare(b, 'en', { numeric: true }));
 
