@@ -99,11 +99,17 @@ export function Button(props: ButtonProps) {
     gap: space[2],
     // A long word breaks into a second line before it leaves the page.
     ...(grow ? { alignSelf: 'stretch' } : { maxWidth: '100%' }),
-    ...(flush ? { marginStart: -(space[3] + stroke.firm) } : {}),
   });
+  // On the frame, not on the shape: there it would be taken off the room that the label has.
+  const outset: ViewStyle = flush ? { marginStart: -(space[3] + stroke.firm) } : {};
 
   return (
-    <View style={grow ? { alignSelf: 'stretch', gap: space[2] } : { gap: space[1], alignItems: 'flex-start', maxWidth: '100%' }}>
+    <View
+      style={[
+        grow ? { alignSelf: 'stretch', gap: space[2] } : { gap: space[1], alignItems: 'flex-start', maxWidth: '100%' },
+        outset,
+      ]}
+    >
       <Pressable
         ref={props.ref}
         role="button"

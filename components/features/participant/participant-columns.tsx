@@ -89,7 +89,7 @@ export function participantColumns({ t, format, now }: { t: TFunction; format: F
       minRem: 7,
       cell: (row) => (row.lastEffect ? t('effect', { kind: t(`diary:effect.${row.lastEffect.kind}`), strength: row.lastEffect.strength, since: format.since(row.lastEffect.at, now) }) : muted(t('none'))),
     },
-    { id: 'next', header: t('column.next'), flex: 0, minRem: 7, cell: (row) => (row.nextFrom === null ? muted(t('none')) : row.nextFrom <= now ? t('nextNow') : format.dayTime(row.nextFrom)) },
+    { id: 'next', header: t('column.next'), flex: 0, minRem: 7, cell: (row) => (row.nextFrom === null || row.state === 'held' || row.state === 'paused' ? muted(t('none')) : row.nextFrom <= now ? t('nextNow') : format.dayTime(row.nextFrom)) },
     { id: 'since', header: t('column.since'), flex: 0, minRem: 4, sortable: true, hideOnPhone: true, cell: (row) => muted(format.shortDay(row.since)) },
   ];
 }
