@@ -164,8 +164,8 @@ describe('the ceilings of a prescription', () => {
     const sign = () => connection.query('update prescription set version = 99, signed_at = now() where id = $1', [id]);
     const addSignature = (account: string, meaning: string) =>
       connection.query(
-        `insert into signature (id, subject_kind, subject_id, account_id, name, role, meaning, content_hash, created_at)
-         select gen_random_uuid(), 'prescription', p.id, $2, 'N', 'clinician', $3, p.content_hash, now() from prescription p where p.id = $1`,
+        `insert into signature (id, subject_kind, subject_id, account_id, name, role, meaning, content_hash, created_at, confirmed_at)
+         select gen_random_uuid(), 'prescription', p.id, $2, 'N', 'clinician', $3, p.content_hash, now(), now() from prescription p where p.id = $1`,
         [id, account, meaning],
       );
     const refusedAt = async () => {
