@@ -49,6 +49,7 @@ import { readPermit } from '@/server/features/permit/read-permit';
 import { readPermitKeys } from '@/server/features/permit/read-permit-keys';
 import { readPhoto } from '@/server/features/photo/read-photo';
 import { readPrescription } from '@/server/features/prescription/read-prescription';
+import { readQualification } from '@/server/features/qualification/read-qualification';
 import { readSession } from '@/server/features/session/read-session';
 import { readShared } from '@/server/features/caregiver/read-shared';
 import { readSharedDiary } from '@/server/features/caregiver/read-shared-diary';
@@ -63,6 +64,7 @@ import { recordTraining } from '@/server/features/training/record-training';
 import { recordWatchedSession } from '@/server/features/training/record-watched-session';
 import { removeCaregiver } from '@/server/features/caregiver/remove-caregiver';
 import { rescheduleSession } from '@/server/features/course/reschedule-session';
+import { runQualification } from '@/server/features/qualification/run-qualification';
 import { sendEvents } from '@/server/features/session/send-events';
 import { sendMessage } from '@/server/features/message/send-message';
 import { setCaregiverCode } from '@/server/features/caregiver/set-caregiver-code';
@@ -144,4 +146,6 @@ export const api: { readonly [Name in keyof Doors]: Action<Doors[Name]> } = {
   readSiteReport,
   exportSessions,
   exportOwn,
+  readQualification,
+  runQualification,
 };

@@ -7,7 +7,7 @@ import { beat, forgetBeats } from '@/db/queries/house';
 import { startCatcher, type Catcher } from '@/server/demo/catcher';
 import { seedDemo } from '@/server/demo/seed';
 import { EnvError, readEnv, type Env } from '@/server/env';
-import { ensureSigningKey } from '@/server/features/permit/signing-key';
+import { ensureSigningKey } from '@/server/signing-key';
 import { firstAdministrator } from '@/server/house/first-administrator';
 import { anchorKeeper } from '@/server/house/keep-anchors';
 import { connectHouse, openHouse, transportOf, type House } from '@/server/house/open-house';

@@ -17,6 +17,7 @@ import precheck from './precheck.json';
 import prescription from './prescription.json';
 import protocol from './protocol.json';
 import publicWords from './public.json';
+import qualification from './qualification.json';
 import review from './review.json';
 import sessions from './sessions.json';
 import equipment from './equipment.json';
@@ -43,6 +44,7 @@ export const en = {
   prescription,
   protocol,
   public: publicWords,
+  qualification,
   review,
   sessions,
   equipment,

@@ -12,7 +12,7 @@ import {
 } from '@/db/queries/audit-anchor';
 import { genesisHash } from '@/db/queries/audit';
 import type { Job, Tx } from '@/server/action';
-import { ensureSigningKey } from '@/server/features/permit/signing-key';
+import { ensureSigningKey } from '@/server/signing-key';
 import { addDays, instantOf, localDate } from '@/shared/values/zone';
 
 /** The kind of token, so that no anchor can ever pass for a permit, which is signed with the same key. */

@@ -3,7 +3,7 @@
 
 import { closeOtherSigningKeys, lockSigningKeys } from '@/db/queries/permit';
 import type { Tx } from '@/server/action';
-import { makeSigningKey } from '@/server/features/permit/signing-key';
+import { makeSigningKey } from '@/server/signing-key';
 import type { Transact } from '@/server/transact';
 
 export interface Rotated {

@@ -94,6 +94,10 @@ import {
   sendMessage,
 } from './message';
 import {
+  readQualification,
+  runQualification,
+} from './qualification';
+import {
   readAudit,
   readSiteReport,
   exportSessions,
@@ -171,6 +175,8 @@ export const doors = {
   readSiteReport,
   exportSessions,
   exportOwn,
+  readQualification,
+  runQualification,
 } as const;
 
 export type Doors = typeof doors;

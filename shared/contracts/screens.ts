@@ -57,5 +57,6 @@ export const screens: readonly ScreenDoor[] = [
   { path: '/devices', group: '(admin)', who: staff },
   { path: '/protocols', group: '(admin)', who: staff },
   { path: '/site', group: '(admin)', who: staff },
+  { path: '/site/qualification', group: '(admin)', who: staff },
   { path: '/account', group: '(admin)', who: staff },
 ];

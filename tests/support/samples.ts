@@ -55,6 +55,9 @@ const coordinator = 'coordinator, own site';
 const administrator = 'administrator, own site';
 const monitor = 'monitor, own site';
 const reason = 'As agreed by telephone';
+const oneCase = JSON.stringify({
+  cases: [{ id: 'half', kind: 'fraction', input: { prescribed_C: 2, delivered_C: 1 }, expected: { fraction: 0.5 } }],
+});
 
 const ofPerson = ({ patient }: PersonsRecord) => ({ participantId: patient.participantId });
 const today = async ({ clinic }: World) => localDate(Date.parse(await clinic.now()), zone);
@@ -395,6 +398,10 @@ export const samples: Record<DoorName, readonly Sample[]> = {
   readSiteReport: [nothing(monitor), site(monitor, ({ siteId }) => ({ query: { siteId } }))],
   exportSessions: [nothing(monitor), site(coordinator, ({ siteId }) => ({ query: { siteId } }))],
   exportOwn: [nothing(self)],
+  readQualification: [nothing(monitor)],
+  runQualification: [
+    site(administrator, ({ siteId }) => ({ body: { siteId, fileName: 'own-cases.json', content: oneCase } })),
+  ],
   // Last: what it clears out of its way is what other doors are asked to do.
   issuePermit: [
     person(self, async ({ clinic, record, withdrawn }, { patient }) =>

@@ -10,6 +10,7 @@ import { useMe } from '@/components/runtime/me';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { Definition } from '@/components/ui/Definition';
+import { ButtonLink } from '@/components/ui/Link';
 import { EmptyState, FailedState, LoadingState } from '@/components/ui/States';
 import { Table } from '@/components/ui/Table';
 import { Tag } from '@/components/ui/Tag';
@@ -34,7 +35,7 @@ export function SiteScreen() {
   const all = sites.data?.pages.flatMap((page) => page.items) ?? [];
   const isAdministrator = me?.account.role === 'administrator';
   return (
-    <StaffShell title={t('title')} place="site">
+    <StaffShell title={t('title')} place="site" actions={<ButtonLink href="/site/qualification" label={t('qualification')} kind="secondary" />}>
       {sites.isPending ? <LoadingState lines={5} /> : null}
       {sites.isError ? <FailedState onRetry={() => void sites.refetch()} /> : null}
       {all.map((site) => (

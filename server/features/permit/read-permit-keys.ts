@@ -2,7 +2,7 @@
 
 import { listSigningKeys } from '@/db/queries/permit';
 import { action } from '@/server/action';
-import { ensureSigningKey } from '@/server/features/permit/signing-key';
+import { ensureSigningKey } from '@/server/signing-key';
 import { readPermitKeys as contract } from '@/shared/contracts/permit';
 import { trustedKeys } from '@/shared/rules/permit-keys';
 

@@ -2,7 +2,7 @@
 
 import { CompactSign, importJWK } from 'jose';
 import type { Tx } from '@/server/action';
-import { ensureSigningKey } from '@/server/features/permit/signing-key';
+import { ensureSigningKey } from '@/server/signing-key';
 import type { PermitClaims } from '@/shared/contracts/permit';
 
 /** Both parts of the key as base64url (RFC 8037). */

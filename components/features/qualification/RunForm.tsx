@@ -1,0 +1,102 @@
+/**
+ * A file of worked cases, chosen and run, and its signed result as a file. It must not read the file but as text.
+ */
+import { useId, useState } from 'react';
+import { useTranslation } from 'react-i18next';
+import { View } from 'react-native';
+import { useCall } from '@/components/runtime/api';
+import { Button } from '@/components/ui/Button';
+import { Notice } from '@/components/ui/Notice';
+import { Text } from '@/components/ui/Text';
+import { space } from '@/components/ui/theme';
+import type { AnswerOf } from '@/shared/contracts/contract';
+import { runQualification } from '@/shared/contracts/qualification';
+
+type Ran = AnswerOf<typeof runQualification>;
+
+/** The whole request is 1 MB at most, and text grows a little on its way (own choice). */
+const bytesMost = 800_000;
+
+/** The file as the browser saves it. */
+function save(name: string, text: string): void {
+  const address = URL.createObjectURL(new Blob([text], { type: 'application/json' }));
+  const link = document.createElement('a');
+  link.href = address;
+  link.download = name;
+  link.click();
+  URL.revokeObjectURL(address);
+}
+
+export function RunForm({ siteId, siteName }: { siteId: string; siteName: string }) {
+  const { t } = useTranslation('qualification');
+  const inputId = useId();
+  const run = useCall(runQualification);
+  const [file, setFile] = useState<File | null>(null);
+  const isTooLarge = file !== null && file.size > bytesMost;
+
+  async function start(): Promise<void> {
+    if (file === null) return;
+    run.mutate({ body: { siteId, fileName: file.name, content: await file.text() } });
+  }
+
+  return (
+    <View style={{ gap: space[3], alignItems: 'flex-start' }}>
+      <label htmlFor={inputId}>
+        <Text weight="bold">{t('choose', { site: siteName })}</Text>
+      </label>
+      <input
+        id={inputId}
+        type="file"
+        accept="application/json,.json"
+        onChange={(event) => {
+          setFile(event.target.files?.[0] ?? null);
+          run.reset();
+        }}
+      />
+      {isTooLarge ? (
+        <Text tone="stop" role="alert">
+          {t('tooLarge')}
+        </Text>
+      ) : null}
+      <Button
+        label={t('run')}
+        accessibleLabel={t('runAt', { site: siteName })}
+        disabled={file === null || isTooLarge}
+        busy={run.isPending}
+        onPress={() => void start()}
+      />
+      {run.error ? (
+        <Notice
+          tone="stop"
+          title={run.error.offline ? t('common:notSent') : run.error.problem.detail}
+          announce="assertive"
+        />
+      ) : null}
+      {run.data ? <Outcome ran={run.data} /> : null}
+    </View>
+  );
+}
+
+function Outcome({ ran }: { ran: Ran }) {
+  const { t } = useTranslation('qualification');
+  const { passed, failed, fileName } = ran.run;
+  const name = t('resultName', { file: fileName.replace(/\.json$/i, '') });
+  return (
+    <Notice
+      tone={failed === 0 ? 'steady' : 'stop'}
+      title={t(failed === 0 ? 'allPassed' : 'someFailed', { passed, failed })}
+      announce="assertive"
+      actions={<Button kind="secondary" label={t('download')} onPress={() => save(name, ran.signed)} />}
+    >
+      {ran.failures.map(({ id, error }, index) => (
+        <Text key={`${index} ${id}`} size="fine">
+          {error === null ? t('caseFailed', { id }) : t('caseUnknown', { id, error })}
+        </Text>
+      ))}
+      {failed > ran.failures.length ? (
+        <Text size="fine">{t('others', { count: failed - ran.failures.length })}</Text>
+      ) : null}
+      <Text size="fine">{t('downloadHelp')}</Text>
+    </Notice>
+  );
+}
