@@ -55,7 +55,8 @@ function Page({ person }: { person: ParticipantView }) {
   const params = { participantId: person.id };
   const { course } = person;
   const open = person.lockouts.find((lockout) => lockout.closedAt === null && lockout.worklistItemId !== null);
-  const next = course?.marks.find((mark) => mark.state === 'next' || mark.state === 'held');
+  // While a hold stands nothing is next: it has no date.
+  const next = course?.marks.find((mark) => mark.state === 'next');
   return (
     <StaffShell
       title={person.name}
