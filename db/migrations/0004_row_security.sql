@@ -20,13 +20,14 @@ BEGIN
     IF EXISTS (SELECT FROM pg_roles WHERE rolname = wanted AND (rolsuper OR rolbypassrls)) THEN
       RAISE EXCEPTION 'The role % may pass by row security. Once, as an administrator of PostgreSQL: ALTER ROLE % NOSUPERUSER NOBYPASSRLS;', wanted, wanted;
     END IF;
-    IF NOT pg_has_role(current_user, wanted, 'MEMBER') THEN
-      BEGIN
-        EXECUTE format('GRANT %I TO %I', wanted, current_user);
-      EXCEPTION WHEN insufficient_privilege THEN
+    -- From PostgreSQL 16 on, whoever makes a role is its member and may still not act as it: hence the grant also where there is one.
+    BEGIN
+      EXECUTE format('GRANT %I TO %I', wanted, current_user);
+    EXCEPTION WHEN insufficient_privilege THEN
+      IF NOT pg_has_role(current_user, wanted, 'MEMBER') THEN
         RAISE EXCEPTION 'The database''s owner may not act as %. Once, as an administrator of PostgreSQL: GRANT rampwell_app, rampwell_house TO %;', wanted, quote_ident(current_user);
-      END;
-    END IF;
+      END IF;
+    END;
   END LOOP;
 END
 $$;

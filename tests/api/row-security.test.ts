@@ -3,12 +3,14 @@
 import { randomUUID } from 'node:crypto';
 import { z } from 'zod';
 import { connect, type Client, type Scope } from '@/db/client';
+import { migrate } from '@/db/migrate';
 import type { AccountActor } from '@/server/action';
 import { api } from '@/server/api';
 import { readEnv } from '@/server/env';
 import { makeTransact, type AnyAction } from '@/server/transact';
 import { secretOfTests } from '../support/clinic';
 import { knockAt } from '../support/knock';
+import { asSuperuser } from '../support/postgres';
 import { allKnocks, nameOf, titled, type Knock } from '../support/samples';
 import { fingerprints } from '../support/tables';
 import { openWorld, standingOf, type Who, type World } from '../support/world';
@@ -259,6 +261,41 @@ describe('plain SQL', () => {
       await entry({ chain: `participant:${person}` }),
       await entry({ actor_id: world.people['clinician, own site'].accountId }),
     ]).toEqual(['added', 'added', 'refused', 'refused', 'refused', 'refused']);
+  });
+});
+
+describe('a database of one’s own, whose owner may not make roles', () => {
+  const name = `rampwell_own_${process.pid}`;
+  const ownUrl = () => url().replace(/\/\/rampwell@(.*)\/[^/]+$/, `//${name}@$1/${name}`);
+  beforeAll(() =>
+    asSuperuser(async (client) => {
+      await client.query(`create role ${name} login`);
+      await client.query(`create database ${name} owner ${name}`);
+    }),
+  );
+  afterAll(() =>
+    asSuperuser(async (client) => {
+      await client.query(`drop database ${name} with (force)`);
+      await client.query(`drop role ${name}`);
+    }),
+  );
+
+  it('says what an administrator must grant, and runs once that is done', async () => {
+    const refusal = await migrate(ownUrl()).then(
+      () => null,
+      (error: Error) => (error.cause instanceof Error ? error.cause.message : error.message),
+    );
+    expect(refusal).toMatch(/GRANT rampwell_app, rampwell_house TO rampwell_own_/);
+    await asSuperuser((client) => client.query(`grant rampwell_app, rampwell_house to ${name}`));
+    await migrate(ownUrl());
+    const own = connect(ownUrl(), 2, () => undefined);
+    try {
+      const count = (scope: Scope) =>
+        own.transaction(scope, async (_db, execute) => (await execute('select count(*)::int n from site', [])).rows[0]);
+      expect([await count('house'), await count(nobody)]).toEqual([{ n: 0 }, { n: 0 }]);
+    } finally {
+      await own.close();
+    }
   });
 });
 
