@@ -43,7 +43,7 @@ export const runQualification = contract({
     siteId: Uuid,
     fileName: Line,
     /** The file as it is: JSON in one of the forms of worked cases. */
-    content: z.string().min(1),
+    content: z.string().min(1).max(900_000),
   }),
   answer: z.strictObject({
     run: QualificationRun,
@@ -52,7 +52,7 @@ export const runQualification = contract({
     /** The signed result as a file: JSON with the result, a compact JWS (RFC 7515, Ed25519) over it, and the public key. */
     signed: z.string(),
   }),
-  refusals: ['qualification.unreadable', 'qualification.too_much'],
+  refusals: ['qualification.too_much'],
   touches: ['qualification'],
   about: 'Runs worked cases against the rules that this server decides with, and signs the result.',
   example: {

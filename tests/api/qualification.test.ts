@@ -97,21 +97,28 @@ it('signs every case, the file’s hash and the version by a key of the house, a
 });
 
 it.each([
-  ['no JSON', '{"cases": [', 'qualification.unreadable'],
-  ['a list', [], 'qualification.unreadable'],
-  ['no cases', { cases: [] }, 'qualification.unreadable'],
-  ['a field that is not known', { cases: [half], colour: 'red' }, 'qualification.unreadable'],
-  [
-    'more cases than are run at once',
-    { cases: Array.from({ length: qualificationLimits.mostCases + 1 }, () => half) },
-    'qualification.too_much',
-  ],
-])('refuses %s, and keeps the refusal alone', async (_what, content, code) => {
+  ['no JSON', '{"cases": ['],
+  ['a list', []],
+  ['no cases', { cases: [] }],
+  ['a field that is not known', { cases: [half], colour: 'red' }],
+])('refuses %s by the field and with what is wrong, and keeps no run', async (_what, content) => {
   const before = await clinic.call(ada, readQualification, {});
   const body = { siteId, fileName: 'own.json', content: textOf(content) };
-  expect(await clinic.refused(ada, runQualification, { body })).toMatchObject({ status: 409, code });
+  expect(await clinic.refused(ada, runQualification, { body })).toMatchObject({
+    ...{ status: 422, code: 'invalid' },
+    fields: [{ path: 'content', code: 'cases_unreadable', facts: { problem: expect.any(String) } }],
+  });
   expect(await clinic.call(ada, readQualification, {})).toEqual(before);
   expect((await entries()).at(-1)).toEqual({ kind: 'refusal' });
+});
+
+it('refuses more cases than are run at once, and says how many may be', async () => {
+  const most = qualificationLimits.mostCases;
+  const content = textOf({ cases: Array.from({ length: most + 1 }, () => half) });
+  const body = { siteId, fileName: 'own.json', content };
+  expect(await clinic.refused(ada, runQualification, { body })).toMatchObject({
+    ...{ status: 409, code: 'qualification.too_much', facts: { cases: most + 1, most } },
+  });
 });
 
 it('gives others their turn while many cases run', async () => {

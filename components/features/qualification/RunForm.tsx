@@ -10,6 +10,7 @@ import { Notice } from '@/components/ui/Notice';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
 import type { AnswerOf } from '@/shared/contracts/contract';
+import type { Problem } from '@/shared/contracts/problem';
 import { runQualification } from '@/shared/contracts/qualification';
 
 type Ran = AnswerOf<typeof runQualification>;
@@ -25,6 +26,11 @@ function save(name: string, text: string): void {
   link.download = name;
   link.click();
   URL.revokeObjectURL(address);
+}
+
+/** Of a field the field's own sentence: it says what is wrong with the file. */
+function sentenceOf({ fields, detail }: Problem): string {
+  return fields?.[0]?.message ?? detail;
 }
 
 export function RunForm({ siteId, siteName }: { siteId: string; siteName: string }) {
@@ -68,7 +74,7 @@ export function RunForm({ siteId, siteName }: { siteId: string; siteName: string
       {run.error ? (
         <Notice
           tone="stop"
-          title={run.error.offline ? t('common:notSent') : run.error.problem.detail}
+          title={run.error.offline ? t('common:notSent') : sentenceOf(run.error.problem)}
           announce="assertive"
         />
       ) : null}

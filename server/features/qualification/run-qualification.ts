@@ -2,7 +2,7 @@
 // the site's audit trail, with the hashes of the file and of the result.
 
 import { version } from '@/package.json';
-import { action, notFound, refuse } from '@/server/action';
+import { action, invalid, notFound, refuse } from '@/server/action';
 import { runCases } from '@/server/features/qualification/run-cases';
 import { sha256, signResult } from '@/server/features/qualification/sign-result';
 import { ensureSigningKey } from '@/server/signing-key';
@@ -16,7 +16,7 @@ export const runQualification = action(contract, async ({ actor, body }, tx) => 
   const { mostCases, mostFailuresShown } = qualificationLimits;
   const ran = await runCases(content);
   if (!ran.ran && ran.why === 'unreadable')
-    return refuse('qualification.unreadable', { siteId, facts: { problem: ran.problem } });
+    return invalid([{ path: 'content', code: 'cases_unreadable', facts: { problem: ran.problem } }]);
   if (!ran.ran) return refuse('qualification.too_much', { siteId, facts: { cases: ran.cases, most: mostCases } });
   const { passed, failed } = tally(ran.results);
   const key = await ensureSigningKey(tx);

@@ -72,22 +72,24 @@ it('sends the chosen file as it is, names what did not pass, and offers the sign
 
 it('says plainly why a file was not run, and sends none that is too large', async () => {
   const server = as('administrator', []);
-  const detail = 'This is not a file of worked cases.';
+  const message = 'This is not a file of worked cases.';
+  const fields = [{ path: 'content', code: 'cases_unreadable', message }];
   const refusal = {
     type: 'about:blank',
     title: 'no',
-    status: 409,
-    detail,
-    code: 'qualification.unreadable',
+    status: 422,
+    detail: 'no',
+    code: 'invalid',
     requestId: '1',
+    fields,
   };
   server.answers['POST /api/qualification'] = refusal;
-  server.statuses['POST /api/qualification'] = 409;
+  server.statuses['POST /api/qualification'] = 422;
   const { user } = show(<QualificationScreen />);
   await screen.findByText('No run yet');
   choose('own.json', '[]');
   await user.click(button());
-  expect(await screen.findByText(detail)).toBeTruthy();
+  expect(await screen.findByText(message)).toBeTruthy();
   choose('large.json', 'x'.repeat(800_001));
   expect(await screen.findByText(/too large/)).toBeTruthy();
   expect(button().getAttribute('aria-disabled')).toBe('true');
