@@ -38,13 +38,13 @@ export function freshAccount(): string {
 let asked = 0;
 for (const name of ['encrypt', 'decrypt', 'verify', 'generateKey', 'importKey'] as const) {
   const { subtle } = crypto;
-  const own: (...words: unknown[]) => Promise<unknown> = Reflect.get(subtle, name).bind(subtle);
+  const own = Reflect.get(subtle, name);
   Object.defineProperty(subtle, name, {
     configurable: true,
     value: async (...words: unknown[]) => {
       asked += 1;
       try {
-        return await own(...words);
+        return await Reflect.apply(own, subtle, words);
       } finally {
         asked -= 1;
       }

@@ -27,7 +27,7 @@ if (typeof Blob !== 'undefined' && !Blob.prototype.arrayBuffer) {
         const reader = new FileReader();
         reader.onload = () => {
           // A buffer of Node's own kind, which its cryptography takes.
-          const copy = Buffer.from(new Uint8Array(reader.result instanceof ArrayBuffer ? reader.result : 0));
+          const copy = Buffer.from(new Uint8Array(reader.result instanceof ArrayBuffer ? reader.result : []));
           resolve(copy.buffer.slice(copy.byteOffset, copy.byteOffset + copy.byteLength));
         };
         reader.onerror = () => reject(new Error(reader.error?.message));
