@@ -6,16 +6,24 @@ import { borrow } from './ground/borrow.mjs';
 import { reachDatabase } from './ground/database.mjs';
 import { checkNode, installPackages } from './ground/install.mjs';
 import { workFolder } from './ground/paths.mjs';
-import { end, main } from './ground/processes.mjs';
+import { end, main, Plainly } from './ground/processes.mjs';
+
+function options() {
+  try {
+    return parseArgs({ options: { withdraw: { type: 'boolean', default: false } } }).values;
+  } catch {
+    throw new Plainly('npm run keys:rotate takes no option but --withdraw.');
+  }
+}
 
 await main(async () => {
   checkNode();
   await installPackages(console.error);
-  const { values } = parseArgs({ options: { withdraw: { type: 'boolean', default: false } } });
+  const values = options();
   process.env.DATABASE_URL = await reachDatabase(console.error);
   process.env.RAMPWELL_DATA ||= workFolder;
   process.env.LOG_LEVEL ||= 'error';
-  const { createHouse, readEnv, rotateKeys } = await borrow(
+  const { createHouse, readEnv, rotateKeys, OtherSecret } = await borrow(
     'server/env',
     'server/house/open-house',
     'server/house/rotate-keys',
@@ -28,6 +36,11 @@ await main(async () => {
       values.withdraw
         ? `Withdrawn: ${withdrawn.join(', ') || 'none'}. Permits under them start nothing on a stimulator that is set up from now on.`
         : 'Keys before it are trusted until the permits under them are over.',
+    );
+  } catch (error) {
+    if (!(error instanceof OtherSecret)) throw error;
+    throw new Plainly(
+      'This is not the secret that the server runs with: set SECRET or RAMPWELL_DATA as it has them. No key was made.',
     );
   } finally {
     await house.close();

@@ -3,8 +3,10 @@
 import { compactVerify, decodeProtectedHeader, importJWK } from 'jose';
 import { z } from 'zod';
 import type { AccountActor } from '@/server/action';
+import { readEnv } from '@/server/env';
 import { readPermitKeys } from '@/server/features/permit/read-permit-keys';
-import { rotateKeys } from '@/server/house/rotate-keys';
+import { OtherSecret, rotateKeys } from '@/server/house/rotate-keys';
+import { makeTransact } from '@/server/transact';
 import type { PermitView } from '@/shared/contracts/permit';
 import { openClinic, type Clinic } from '../support/clinic';
 import { goToMorning, permitFor, readyPatient } from '../support/running';
@@ -65,6 +67,14 @@ it('keeps every key on record, the private part sealed, and the change in the au
     `select subject_id, actor_role from audit_entry where action = 'keys.rotate'`,
   );
   expect(entries).toEqual([{ subject_id: kid, actor_role: 'system' }]);
+});
+
+it('makes no key under another secret than the one in use was sealed with', async () => {
+  await trusted();
+  const url = clinic.client.pool.options.connectionString ?? '';
+  const env = readEnv({ DATABASE_URL: url, DEMO: '1', SECRET: 'another secret than the server has, long enough' });
+  await expect(rotateKeys(makeTransact(clinic.client, env), { withdraw: true })).rejects.toThrow(OtherSecret);
+  expect(await clinic.rows({ kid: z.string() }, 'select kid from signing_key where closed_at is null')).toHaveLength(1);
 });
 
 it('makes one key when many ask at once for the first', async () => {
