@@ -13,6 +13,6 @@ module.exports = {
   testPathIgnorePatterns: [
     '/node_modules/',
     ...['sentences', 'description', 'trace', 'qualify-command', 'signatures'].map((name) => `/${name}.test.ts$`),
-    ...['device-seeds', 'hours-of-years', 'late-record', 'clearance-pairs'].map((name) => `/${name}.test.ts$`),
+    ...['device-seeds', 'hours-of-years', 'late-record'].map((name) => `/${name}.test.ts$`),
   ],
 };
