@@ -38,6 +38,7 @@ const ofNobodysRecord = [
   'site.list-staff',
   'protocol.list',
   'permit.read-keys',
+  'qualification.read',
 ];
 const holdsNobodysRecord = (name: string) => /^(house|demo)\./.test(name) || ofNobodysRecord.includes(name);
 
