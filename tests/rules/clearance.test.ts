@@ -132,6 +132,12 @@ describe('clearance', () => {
     expect(codesOf({ sessions: [older, { ...past, hasDiary: false }] })).toEqual(['diary_missing']);
   });
 
+  it('misses the diary of one of two sessions that ended at one instant, whichever is listed first', () => {
+    const [written, missing] = [{ ...past }, { ...past, hasDiary: false }];
+    expect(codesOf({ sessions: [written, missing] })).toEqual(['diary_missing']);
+    expect(codesOf({ sessions: [missing, written] })).toEqual(['diary_missing']);
+  });
+
   it('judges nothing by a history of which one end is not known', () => {
     const sessions = [{ ...past, endedAt: undefined }, yesterday('2026-05-11T20:00:01Z')];
     expect(ask({ sessions }).reasons.map(({ fact }) => fact)).toEqual(['sessions.0.ended_at']);

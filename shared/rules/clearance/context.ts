@@ -102,10 +102,17 @@ export function allKnown<K extends 'startedAt' | 'endedAt' | 'chargeCoulomb' | '
   return whole.length === sessions.length ? whole : undefined;
 }
 
+type EndedSession = PastSession & { readonly endedAt: number };
+
+/** Of two that ended at one instant, in whatever order they are listed, the one whose diary is missing. */
+function isLater(session: EndedSession, last: EndedSession): boolean {
+  return session.endedAt > last.endedAt || (session.endedAt === last.endedAt && session.hasDiary === false);
+}
+
 /** The session that ended last, assumed ends included. */
-export function lastSession(context: ClearanceContext): (PastSession & { readonly endedAt: number }) | undefined {
-  return allKnown(context.sessions, 'endedAt')?.reduce<(PastSession & { readonly endedAt: number }) | undefined>(
-    (last, session) => (last === undefined || session.endedAt > last.endedAt ? session : last),
+export function lastSession(context: ClearanceContext): EndedSession | undefined {
+  return allKnown(context.sessions, 'endedAt')?.reduce<EndedSession | undefined>(
+    (last, session) => (last === undefined || isLater(session, last) ? session : last),
     undefined,
   );
 }
