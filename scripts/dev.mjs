@@ -41,7 +41,9 @@ function openFront(serverPort, pagesPort) {
 
 function startPages(pagesPort) {
   const expo = path.join(root, 'node_modules', 'expo', 'bin', 'cli');
-  const env = { ...process.env, EXPO_OFFLINE: '1', EXPO_NO_TELEMETRY: '1', BROWSER: 'none', NODE_ENV: 'development' };
+  // Our tsconfig.json is ours: Expo would write it anew in its own way.
+  const quiet = { EXPO_OFFLINE: '1', EXPO_NO_TELEMETRY: '1', EXPO_NO_TYPESCRIPT_SETUP: '1', BROWSER: 'none' };
+  const env = { ...process.env, ...quiet, NODE_ENV: 'development' };
   delete env.CI; // With it Metro does not watch.
   const child = start(process.execPath, [expo, 'start', '--port', String(pagesPort)], { cwd: root, env });
   beforeEnd(() => stopChild(child));

@@ -3,7 +3,7 @@
  * anything to what the fields show.
  */
 import { useController, type Control, type FieldPath, type FieldValues } from 'react-hook-form';
-import { Chips, Choice, type ChipsProps, type ChoiceProps } from '@/components/ui/Choice';
+import { Choice, type ChoiceProps } from '@/components/ui/Choice';
 import {
   CheckboxField,
   DateField,
@@ -22,7 +22,6 @@ import {
   type TextFieldProps,
   type TimeFieldProps,
 } from '@/components/ui/Field';
-import { ScaleInput, type ScaleInputProps } from '@/components/ui/ScaleInput';
 
 /** What ties a field to its form. `T` is the form's output, which no field needs to know. */
 interface Tie<V extends FieldValues, T> {
@@ -203,20 +202,4 @@ export function FormChoice<O extends string, V extends FieldValues, T>({
   const { held, change, error } = useTied({ name, control });
   const value = rest.options.find((option) => option.value === held)?.value ?? null;
   return <Choice {...rest} value={value} onChange={change} error={error} />;
-}
-
-export function FormChips<O extends string, V extends FieldValues, T>({
-  name,
-  control,
-  ...rest
-}: Tied<ChipsProps<O>, V, T>) {
-  const { held, change, error } = useTied({ name, control });
-  const chosen: readonly unknown[] = Array.isArray(held) ? held : [];
-  const values = rest.options.map((option) => option.value).filter((value) => chosen.includes(value));
-  return <Chips {...rest} values={values} onChange={change} error={error} />;
-}
-
-export function FormScaleInput<V extends FieldValues, T>({ name, control, ...rest }: Tied<ScaleInputProps, V, T>) {
-  const { held, change, error } = useTied({ name, control });
-  return <ScaleInput {...rest} value={typeof held === 'number' ? held : null} onChange={change} error={error} />;
 }

@@ -1,6 +1,6 @@
 // The house's own rows: outbox, keys seen, heartbeats, the demo's mailbox, advisory locks. No clinical row is touched here.
 
-import { and, asc, count, desc, eq, gt, isNull, lt, lte, min, or, sql } from 'drizzle-orm';
+import { and, asc, desc, eq, gt, isNull, lt, lte, min, or, sql } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { demoMail, demoProgress, heartbeat, keySeen, outbox } from '@/db/schema/house';
 
@@ -73,14 +73,6 @@ export async function nextOutboxDue(db: Db): Promise<string | null> {
     .from(outbox)
     .where(isNull(outbox.closedAt));
   return row?.at ?? null;
-}
-
-export async function countOutboxDue(db: Db, now: string): Promise<number> {
-  const [row] = await db
-    .select({ rows: count() })
-    .from(outbox)
-    .where(and(isNull(outbox.closedAt), lte(outbox.dueAt, now)));
-  return row?.rows ?? 0;
 }
 
 export type KeySeen = typeof keySeen.$inferSelect;

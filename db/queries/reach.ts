@@ -1,6 +1,6 @@
 // Who may reach what. One predicate a reach; out of reach is the same answer as not there (null).
 
-import { and, eq, inArray, isNull } from 'drizzle-orm';
+import { and, eq, isNull } from 'drizzle-orm';
 import type { Db } from '@/db/client';
 import { caregiver, participant } from '@/db/schema/participant';
 
@@ -57,9 +57,4 @@ export async function findCaregiverLink(db: Db, accountId: string, participantId
     )
     .limit(1);
   return row ?? null;
-}
-
-/** Condition "at one of the actor's own sites" for lists of participants. */
-export function atOwnSites(actor: Reacher) {
-  return inArray(participant.siteId, [...actor.siteIds]);
 }

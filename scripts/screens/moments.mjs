@@ -51,7 +51,14 @@ async function precheck({ page, shot }) {
   await shot('outcome');
 }
 
-async function wholeSession({ page, shot }) {
+const wellToday = {
+  ...{ seizure: 'no', faint: 'no', headInjury: 'no', implantOrMetal: false, skin: 'ok', mood: [], headache: 0 },
+  ...{ sleptHours: 7, drinksLast12h: 0, drinks12To24h: 0, feelsAlcohol: false, drugs24h: false, newMedicine: 'none' },
+  ...{ unwell: false, ready: true },
+};
+
+/** The check before a session, answered as somebody who is well. */
+async function checkedToday(page) {
   await page.evaluate(async (answers) => {
     await fetch('/api/prechecks', {
       method: 'POST',
@@ -59,6 +66,19 @@ async function wholeSession({ page, shot }) {
       body: JSON.stringify({ answers }),
     });
   }, wellToday);
+}
+
+/** Waits until every pad has good contact; one that sits badly is wetted and pressed once. */
+async function goodContact(page) {
+  const start = page.getByRole('button', { name: 'Start', exact: true });
+  const wetted = page.getByRole('button', { name: /^I have wetted and pressed it/ });
+  await start.or(wetted).first().waitFor();
+  for (const button of await wetted.all()) await button.click();
+  await start.waitFor();
+}
+
+async function wholeSession({ page, shot }) {
+  await checkedToday(page);
   await page.goto('/today');
   await heading(page, 'You can start your session now');
   await shot('today, checked');
@@ -76,7 +96,7 @@ async function wholeSession({ page, shot }) {
   await press(page, 'Next: contact');
   await heading(page, 'Check the contact');
   await shot('set-up 3, settling');
-  await page.getByRole('button', { name: 'Start', exact: true }).waitFor();
+  await goodContact(page);
   await shot('set-up 3, good');
   await press(page, 'Start');
   await heading(page, /minutes left$/);
@@ -128,25 +148,14 @@ async function wholeSession({ page, shot }) {
   await shot('receipt');
 }
 
-const wellToday = {
-  ...{ seizure: 'no', faint: 'no', headInjury: 'no', implantOrMetal: false, skin: 'ok', mood: [], headache: 0 },
-  ...{ sleptHours: 7, drinksLast12h: 0, drinks12To24h: 0, feelsAlcohol: false, drugs24h: false, newMedicine: 'none' },
-  ...{ unwell: false, ready: true },
-};
-
 async function stopped({ page, shot }) {
-  await page.evaluate(async (answers) => {
-    await fetch('/api/prechecks', {
-      method: 'POST',
-      headers: { 'content-type': 'application/json' },
-      body: JSON.stringify({ answers }),
-    });
-  }, wellToday);
+  await checkedToday(page);
   await page.goto('/set-up');
   await press(page, 'Find the stimulator');
   await press(page, 'Next: the pads');
   for (const step of await page.getByRole('checkbox').all()) await step.click();
   await press(page, 'Next: contact');
+  await goodContact(page);
   await press(page, 'Start');
   await press(page, '60× faster time');
   await page.getByText(/^Holding at/).waitFor();

@@ -1,28 +1,9 @@
 // Every door of the house: what Express mounts, what the client may call, what the access matrix walks.
 // A door that is not in this list does not exist.
 
-import {
-  readHealth,
-  listDemoAccounts,
-  listDemoMail,
-  moveDemoClock,
-} from './house';
-import {
-  readMe,
-  lookAtInvitation,
-  acceptInvitation,
-  joinByInvitation,
-  stopMails,
-} from './account';
-import {
-  listSites,
-  addSite,
-  listStaff,
-  inviteStaff,
-  suspendStaff,
-  listProtocols,
-  changeProtocol,
-} from './site';
+import { readHealth, listDemoAccounts, listDemoMail, moveDemoClock } from './house';
+import { readMe, lookAtInvitation, acceptInvitation, joinByInvitation, stopMails } from './account';
+import { listSites, addSite, listStaff, inviteStaff, suspendStaff, listProtocols, changeProtocol } from './site';
 import {
   listParticipants,
   enrolParticipant,
@@ -31,19 +12,9 @@ import {
   readTimeline,
   readTrends,
   withdrawParticipant,
-  recordConsent,
-  recordScreening,
-  recordTraining,
-  recordWatchedSession,
 } from './participant';
-import {
-  listDevices,
-  addDevice,
-  assignDevice,
-  changeDeviceState,
-  listSupplies,
-  giveSupply,
-} from './device';
+import { recordConsent, recordScreening, recordTraining, recordWatchedSession } from './readiness';
+import { listDevices, addDevice, assignDevice, changeDeviceState, listSupplies, giveSupply } from './device';
 import {
   writePrescription,
   readPrescription,
@@ -51,35 +22,11 @@ import {
   signPrescription,
   acknowledgePrescription,
 } from './prescription';
-import {
-  readCourse,
-  pauseCourse,
-  rescheduleSession,
-} from './course';
-import {
-  readClearance,
-  answerPrecheck,
-} from './clearance';
-import {
-  issuePermit,
-  readPermit,
-  readPermitKeys,
-  readOwnDevice,
-  sendEvents,
-} from './permit';
-import {
-  readSession,
-  writeDiary,
-  listDiary,
-  addPhoto,
-  readPhoto,
-} from './session';
-import {
-  readWorklist,
-  claimItem,
-  recordReview,
-  listReviews,
-} from './worklist';
+import { readCourse, pauseCourse, rescheduleSession } from './course';
+import { readClearance, answerPrecheck } from './clearance';
+import { issuePermit, readPermit, readPermitKeys, readOwnDevice, sendEvents } from './permit';
+import { readSession, writeDiary, listDiary, addPhoto, readPhoto } from './session';
+import { readWorklist, claimItem, recordReview, listReviews } from './worklist';
 import {
   listCaregivers,
   inviteCaregiver,
@@ -89,20 +36,9 @@ import {
   readSharedDiary,
   setCaregiverCode,
 } from './caregiver';
-import {
-  listMessages,
-  sendMessage,
-} from './message';
-import {
-  readQualification,
-  runQualification,
-} from './qualification';
-import {
-  readAudit,
-  readSiteReport,
-  exportSessions,
-  exportOwn,
-} from './report';
+import { listMessages, sendMessage } from './message';
+import { readQualification, runQualification } from './qualification';
+import { readAudit, readSiteReport, exportSessions, exportOwn } from './report';
 
 export const doors = {
   readHealth,

@@ -71,9 +71,7 @@ function useUnusedPermit(accountId: string | undefined, answer: ClearanceView | 
     if (!accountId || !sessionId) return;
     // Not told is not lost: the next look at Today tries again.
     void reportUnused(accountId, sessionId).then((isTold) => (isTold ? again() : undefined), () => undefined);
-    // `again` is new at every drawing; the session decides.
-    // eslint-disable-next-line react-hooks/exhaustive-deps
-  }, [accountId, sessionId]);
+  }, [accountId, sessionId, again]);
 }
 
 export function useToday(): Today {

@@ -16,7 +16,8 @@ import { Card } from '@/components/ui/Card';
 import { Notice } from '@/components/ui/Notice';
 import { LoadingState } from '@/components/ui/States';
 import { space } from '@/components/ui/theme';
-import { readParticipant, recordConsent } from '@/shared/contracts/participant';
+import { readParticipant } from '@/shared/contracts/participant';
+import { recordConsent } from '@/shared/contracts/readiness';
 import { listProtocols } from '@/shared/contracts/site';
 
 const points = ['understandsPurpose', 'understandsRisks', 'understandsMayStop', 'agreesToDataUse', 'agreesToPhotos', 'questionsAnswered', 'copyGiven'] as const;

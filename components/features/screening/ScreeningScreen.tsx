@@ -15,7 +15,8 @@ import { Choice } from '@/components/ui/Choice';
 import { Notice } from '@/components/ui/Notice';
 import { useToast } from '@/components/ui/Toast';
 import { space } from '@/components/ui/theme';
-import { readParticipant, recordScreening } from '@/shared/contracts/participant';
+import { readParticipant } from '@/shared/contracts/participant';
+import { recordScreening } from '@/shared/contracts/readiness';
 import { judgeScreening, screeningItems, type ScreeningAnswers } from '@/shared/rules/screening';
 import { ScreeningItemCard } from './ScreeningItemCard';
 

@@ -15,7 +15,8 @@ import { Notice } from '@/components/ui/Notice';
 import { useToast } from '@/components/ui/Toast';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
-import { readParticipant, recordTraining } from '@/shared/contracts/participant';
+import { readParticipant } from '@/shared/contracts/participant';
+import { recordTraining } from '@/shared/contracts/readiness';
 import { capabilityItems, trainingSkills } from '@/shared/rules/screening';
 import { WatchedCard } from './WatchedCard';
 

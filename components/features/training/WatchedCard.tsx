@@ -10,7 +10,7 @@ import { Card } from '@/components/ui/Card';
 import { SelectField, TextAreaField } from '@/components/ui/Field';
 import { Notice } from '@/components/ui/Notice';
 import { space } from '@/components/ui/theme';
-import { recordWatchedSession } from '@/shared/contracts/participant';
+import { recordWatchedSession } from '@/shared/contracts/readiness';
 import type { BodyIn } from '@/shared/contracts/contract';
 
 type Watched = BodyIn<typeof recordWatchedSession>;

@@ -4,7 +4,7 @@ import { insertConsent } from '@/db/queries/consent';
 import { readProtocolInForce } from '@/db/queries/protocol';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { action, notFound, refuse } from '@/server/action';
-import { recordConsent as contract } from '@/shared/contracts/participant';
+import { recordConsent as contract } from '@/shared/contracts/readiness';
 import { consentRefusal } from '@/shared/rules/enrolment';
 
 export const recordConsent = action(contract, async ({ actor, params, body }, tx) => {

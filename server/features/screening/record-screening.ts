@@ -4,7 +4,7 @@ import { readProtocolInForce } from '@/db/queries/protocol';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { insertScreening } from '@/db/queries/screening';
 import { action, notFound, refuse } from '@/server/action';
-import { recordScreening as contract } from '@/shared/contracts/participant';
+import { recordScreening as contract } from '@/shared/contracts/readiness';
 import { validUntil as validUntilOf } from '@/shared/rules/house-terms';
 import { screeningRecord } from '@/shared/rules/screening-record';
 

@@ -4,7 +4,7 @@ import { readProtocolInForce } from '@/db/queries/protocol';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { insertTraining } from '@/db/queries/training';
 import { action, notFound, refuse } from '@/server/action';
-import { recordTraining as contract } from '@/shared/contracts/participant';
+import { recordTraining as contract } from '@/shared/contracts/readiness';
 import { validUntil as validUntilOf } from '@/shared/rules/house-terms';
 import { capabilityItems, judgeTraining } from '@/shared/rules/screening';
 

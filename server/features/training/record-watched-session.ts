@@ -4,7 +4,7 @@ import { readProtocolInForce } from '@/db/queries/protocol';
 import { lockParticipantInReach } from '@/db/queries/reach';
 import { countWatchedSessions, insertWatchedSession } from '@/db/queries/training';
 import { action, notFound, refuse } from '@/server/action';
-import { recordWatchedSession as contract } from '@/shared/contracts/participant';
+import { recordWatchedSession as contract } from '@/shared/contracts/readiness';
 import { watchingEnd } from '@/shared/rules/house-terms';
 
 export const recordWatchedSession = action(contract, async ({ actor, params, body }, tx) => {
