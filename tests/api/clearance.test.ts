@@ -5,20 +5,17 @@ import type { AccountActor } from '@/server/action';
 import { readClearance } from '@/server/features/clearance/read-clearance';
 import { pauseCourse } from '@/server/features/course/pause-course';
 import { changeDeviceState } from '@/server/features/device/change-device-state';
-import { openClinic, type Clinic, type Patient } from '../support/clinic';
+import { type Clinic, type Patient } from '../support/clinic';
 import { sign, write } from '../support/prescribing';
 import { makeReady } from '../support/records';
-import { answer, goToMorning, permitFor, readyPatient, runSession } from '../support/running';
+import { answer, permitFor, readyPatient, runSession, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterAll(() => clinic.close());
 

@@ -4,9 +4,9 @@ import { randomUUID } from 'node:crypto';
 import { z } from 'zod';
 import type { AccountActor } from '@/server/action';
 import { ceilings } from '@/shared/rules/ceilings';
-import { openClinic, type Clinic, type Patient } from '../support/clinic';
+import { type Clinic, type Patient } from '../support/clinic';
 import { inForce } from '../support/prescribing';
-import { goToMorning, permitFor, quietDiary, readyPatient, runSession, type ReadyPatient } from '../support/running';
+import { permitFor, quietDiary, readyPatient, runSession, type ReadyPatient, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
@@ -17,10 +17,7 @@ let person: Patient;
 let permitId: string;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
   ready = await readyPatient(clinic, oona, siteId, { schedule: { hoursFrom: '00:00', hoursTo: '23:59' } });
   person = ready.patient;
   const done = await runSession(clinic, ready);

@@ -7,18 +7,15 @@ import { writeDiary } from '@/server/features/diary/write-diary';
 import { readSession } from '@/server/features/session/read-session';
 import type { PermitView } from '@/shared/contracts/permit';
 import type { DiaryAnswers, NextDayAnswers } from '@/shared/rules/lockout';
-import { openClinic, type Clinic, type Patient } from '../support/clinic';
-import { goToMorning, permitFor, readyPatient, runSession, type ReadyPatient } from '../support/running';
+import { type Clinic, type Patient } from '../support/clinic';
+import { permitFor, readyPatient, runSession, type ReadyPatient, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterAll(() => clinic.close());
 

@@ -8,18 +8,15 @@ import { readPermitKeys } from '@/server/features/permit/read-permit-keys';
 import { OtherSecret, rotateKeys } from '@/server/house/rotate-keys';
 import { makeTransact } from '@/server/transact';
 import type { PermitView } from '@/shared/contracts/permit';
-import { openClinic, type Clinic } from '../support/clinic';
-import { goToMorning, permitFor, readyPatient } from '../support/running';
+import { type Clinic } from '../support/clinic';
+import { permitFor, readyPatient, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
 let oona: AccountActor;
 
 beforeEach(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterEach(() => clinic.close());
 

@@ -10,11 +10,10 @@ import { changeDeviceState } from '@/server/features/device/change-device-state'
 import { withdrawParticipant } from '@/server/features/participant/withdraw-participant';
 import { issuePermit } from '@/server/features/permit/issue-permit';
 import { readPermit } from '@/server/features/permit/read-permit';
-import { openClinic, type Clinic } from '../support/clinic';
+import { type Clinic } from '../support/clinic';
 import { sign, write, type Change } from '../support/prescribing';
 import {
   answer,
-  goToMorning,
   numbered,
   permitBody,
   permitFor,
@@ -22,6 +21,7 @@ import {
   runUpTo,
   samplesOf,
   send,
+  openMorning,
 } from '../support/running';
 import type { ReadyPatient, Said } from '../support/running';
 
@@ -30,10 +30,7 @@ let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterAll(() => clinic.close());
 

@@ -14,11 +14,10 @@ import { changeProtocol } from '@/server/features/protocol/change-protocol';
 import { listProtocols } from '@/server/features/protocol/list-protocols';
 import { makeTransact } from '@/server/transact';
 import { PermitClaims, type PermitView } from '@/shared/contracts/permit';
-import { openClinic, secretOfTests, type Clinic } from '../support/clinic';
+import { secretOfTests, type Clinic } from '../support/clinic';
 import { sign, write } from '../support/prescribing';
 import {
   answer,
-  goToMorning,
   permitBody,
   permitFor,
   readyPatient,
@@ -26,6 +25,7 @@ import {
   wholeRun,
   numbered,
   type ReadyPatient,
+  openMorning,
 } from '../support/running';
 
 let clinic: Clinic;
@@ -33,10 +33,7 @@ let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterAll(() => clinic.close());
 

@@ -8,9 +8,9 @@ import { recordConsent } from '@/server/features/consent/record-consent';
 import { addPhoto } from '@/server/features/photo/add-photo';
 import { readPhoto } from '@/server/features/photo/read-photo';
 import type { PermitView } from '@/shared/contracts/permit';
-import { openClinic, type Clinic, type Patient } from '../support/clinic';
+import { type Clinic, type Patient } from '../support/clinic';
 import { consentForm } from '../support/records';
-import { goToMorning, permitFor, readyPatient, runSession } from '../support/running';
+import { permitFor, readyPatient, runSession, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
@@ -19,10 +19,7 @@ let patient: Patient;
 let permit: PermitView;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
   const ready = await readyPatient(clinic, oona, siteId);
   patient = ready.patient;
   permit = await runSession(clinic, ready);

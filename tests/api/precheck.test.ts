@@ -9,18 +9,15 @@ import { readClearance } from '@/server/features/clearance/read-clearance';
 import { issuePermit } from '@/server/features/permit/issue-permit';
 import { readPermit } from '@/server/features/permit/read-permit';
 import { answerPrecheck } from '@/server/features/precheck/answer-precheck';
-import { openClinic, type Clinic, type Patient } from '../support/clinic';
-import { answer, clearAnswers, goToMorning, permitBody, permitFor, readyPatient } from '../support/running';
+import { type Clinic, type Patient } from '../support/clinic';
+import { answer, clearAnswers, permitBody, permitFor, readyPatient, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterAll(() => clinic.close());
 

@@ -9,10 +9,9 @@ import { readPermit } from '@/server/features/permit/read-permit';
 import { readSession } from '@/server/features/session/read-session';
 import { sendEvents } from '@/server/features/session/send-events';
 import type { PermitView, SessionEvent } from '@/shared/contracts/permit';
-import { openClinic, type Clinic, type Patient } from '../support/clinic';
+import { type Clinic, type Patient } from '../support/clinic';
 import {
   answer,
-  goToMorning,
   numbered,
   permitFor,
   quietDiary,
@@ -23,6 +22,7 @@ import {
   send,
   wholeRun,
   type ReadyPatient,
+  openMorning,
 } from '../support/running';
 
 let clinic: Clinic;
@@ -30,10 +30,7 @@ let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 });
 afterAll(() => clinic.close());
 

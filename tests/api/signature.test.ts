@@ -16,17 +16,14 @@ import { openClinic, type Clinic } from '../support/clinic';
 import { openTestHouse, password } from '../support/house';
 import { pastTheGuards } from '../support/postgres';
 import { signatureOn, write } from '../support/prescribing';
-import { answer, goToMorning, permitBody, readyPatient, type ReadyPatient } from '../support/running';
+import { answer, goToMorning, permitBody, readyPatient, type ReadyPatient, openMorning } from '../support/running';
 
 let clinic: Clinic;
 let siteId: string;
 let oona: AccountActor;
 
 beforeAll(async () => {
-  clinic = await openClinic();
-  await goToMorning(clinic);
-  siteId = await clinic.site('LS');
-  oona = await clinic.staff('Oona Feld', 'clinician', siteId);
+  ({ clinic, siteId, oona } = await openMorning());
 }, 60_000);
 afterAll(() => clinic.close());
 

@@ -9,7 +9,7 @@ import { sendEvents } from '@/server/features/session/send-events';
 import type { PermitView, SessionEvent } from '@/shared/contracts/permit';
 import type { PrecheckAnswers } from '@/shared/rules/precheck';
 import { instantOf, localDate, addDays } from '@/shared/values/zone';
-import type { Clinic, Patient } from './clinic';
+import { openClinic, type Clinic, type Patient } from './clinic';
 import { inForce, type Change } from './prescribing';
 import { makeReady } from './records';
 
@@ -22,6 +22,14 @@ export async function goToMorning(clinic: Clinic): Promise<void> {
   const ten = instantOf(today, '10:00', zone);
   const next = ten > now ? ten : instantOf(addDays(today, 1), '10:00', zone);
   await clinic.advance(Math.ceil((next - now) / 1000));
+}
+
+/** A clinic of its own in the morning, with its clinician: how most tests of a session begin. */
+export async function openMorning(): Promise<{ clinic: Clinic; siteId: string; oona: AccountActor }> {
+  const clinic = await openClinic();
+  await goToMorning(clinic);
+  const siteId = await clinic.site('LS');
+  return { clinic, siteId, oona: await clinic.staff('Oona Feld', 'clinician', siteId) };
 }
 
 export interface ReadyPatient {
