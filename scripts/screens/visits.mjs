@@ -26,7 +26,7 @@ export async function ask(page, address) {
 /** The fullest example of each kind of thing, so that a picture shows what the screen can do. */
 const examples = {
   participantId: async (page, role) => {
-    if (role === 'caregiver') return (await ask(page, '/api/shared'))?.[0]?.participantId;
+    if (role === 'caregiver') return (await ask(page, '/api/shared'))?.items?.[0]?.participantId;
     const rows = (await ask(page, '/api/participants?limit=100'))?.items ?? [];
     return rows.sort((a, b) => b.marks.length + b.holds * 10 - a.marks.length - a.holds * 10)[0]?.id;
   },
