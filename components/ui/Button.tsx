@@ -100,8 +100,8 @@ export function Button(props: ButtonProps) {
     // A long word breaks into a second line before it leaves the page.
     ...(grow ? { alignSelf: 'stretch' } : { maxWidth: '100%' }),
   });
-  // On the frame, not on the shape: there it would be taken off the room that the label has.
-  const outset: ViewStyle = flush ? { marginStart: -(space[3] + stroke.firm) } : {};
+  // Moved, not pulled by a margin: that would be taken off the room that the label has.
+  const outset: ViewStyle = flush ? { insetInlineStart: -(space[3] + stroke.firm) } : {};
 
   return (
     <View

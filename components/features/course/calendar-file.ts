@@ -1,5 +1,6 @@
 // The planned times as an iCalendar file (RFC 5545). Titles are private: nothing in it says what the time is for.
 
+import { saveFile } from '@/components/runtime/save-file';
 import type { CourseMark } from '@/shared/contracts/course';
 
 /** `2026-05-12T16:00:00.000Z` → `20260512T160000Z` */
@@ -35,10 +36,5 @@ export function calendarOf(marks: readonly CourseMark[], title: string, now: str
 
 /** Hands the file to the browser. */
 export function saveCalendar(marks: readonly CourseMark[], title: string, now: string): void {
-  const address = URL.createObjectURL(new Blob([calendarOf(marks, title, now)], { type: 'text/calendar' }));
-  const link = document.createElement('a');
-  link.href = address;
-  link.download = 'planned-times.ics';
-  link.click();
-  URL.revokeObjectURL(address);
+  saveFile('planned-times.ics', 'text/calendar', calendarOf(marks, title, now));
 }

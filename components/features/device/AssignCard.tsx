@@ -8,7 +8,7 @@ import { useCall, usePages } from '@/components/runtime/api';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { SelectField } from '@/components/ui/Field';
-import { ButtonLink } from '@/components/ui/Link';
+import { Link } from '@/components/ui/Link';
 import { Notice } from '@/components/ui/Notice';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
@@ -34,7 +34,7 @@ export function AssignCard({ person, writes }: { person: ParticipantView; writes
             <Button label={t('device.assign')} disabled={deviceId === ''} busy={assign.isPending} onPress={() => assign.mutate({ params: { deviceId }, body: { participantId: person.id }, key: crypto.randomUUID() })} />
           </>
         ) : null}
-        <ButtonLink kind="quiet" size="small" href="/devices" label={t('device.register')} />
+        <Link href="/devices">{t('device.register')}</Link>
       </View>
     </Card>
   );

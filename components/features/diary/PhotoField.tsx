@@ -2,12 +2,13 @@
  * A photo of the skin, if the person wants: what it is used for is said before it is taken, and nothing is kept without a yes. It must not
  * send anything; the diary does, with the photo.
  */
-import { useEffect, useId, useMemo, useState } from 'react';
+import { useEffect, useMemo, useState } from 'react';
 import { Image, View } from 'react-native';
 import { useTranslation } from 'react-i18next';
 import { Button } from '@/components/ui/Button';
 import { Card } from '@/components/ui/Card';
 import { CheckboxField } from '@/components/ui/Field';
+import { FilePicker } from '@/components/ui/FilePicker';
 import { Text } from '@/components/ui/Text';
 import { radius, space, useTheme } from '@/components/ui/theme';
 import { photoLimits } from '@/shared/rules/house-limits';
@@ -34,12 +35,11 @@ export function PhotoField({ photo, onChange }: PhotoFieldProps) {
   const { rem } = useTheme();
   const [mayUse, setMayUse] = useState(photo !== null);
   const [isTooLarge, setTooLarge] = useState(false);
-  const inputId = useId();
   const preview = usePreview(photo);
-  const take = (file: File | undefined) => {
-    const large = file !== undefined && file.size > photoLimits.mostBytes;
+  const take = (file: File | null) => {
+    const large = file !== null && file.size > photoLimits.mostBytes;
     setTooLarge(large);
-    onChange(large ? null : (file ?? null));
+    onChange(large ? null : file);
   };
   return (
     <Card heading={t('photo.title')} note={t('photo.use')}>
@@ -53,15 +53,11 @@ export function PhotoField({ photo, onChange }: PhotoFieldProps) {
       />
       {mayUse ? (
         <View style={{ gap: space[2] }}>
-          <label htmlFor={inputId}>
-            <Text weight="bold">{t('photo.choose')}</Text>
-          </label>
-          <input
-            id={inputId}
-            type="file"
+          <FilePicker
+            label={t('photo.choose')}
+            chosenName={photo?.name ?? null}
             accept="image/jpeg,image/png,image/webp"
-            capture="environment"
-            onChange={(event) => take(event.target.files?.[0])}
+            onChoose={take}
           />
           {isTooLarge ? (
             <Text tone="stop" role="alert">

@@ -58,7 +58,7 @@ export function Thread({ participantId }: { participantId?: string }) {
     <View style={{ gap: space[4] }}>
       {list.isPending ? <LoadingState /> : null}
       {list.isError ? <FailedState onRetry={() => void list.refetch()} /> : null}
-      {list.hasNextPage ? <Button kind="quiet" label={t('older')} busy={list.isFetchingNextPage} onPress={() => void list.fetchNextPage()} /> : null}
+      {list.hasNextPage ? <Button kind="quiet" flush label={t('older')} busy={list.isFetchingNextPage} onPress={() => void list.fetchNextPage()} /> : null}
       {list.data && messages.length === 0 ? <EmptyState title={t('empty')}>{t(participantId ? 'emptyHelpStaff' : 'emptyHelp')}</EmptyState> : null}
       <View role="list" aria-label={t('title')} style={{ gap: space[3] }}>
         {messages.map((message) => (

@@ -39,7 +39,7 @@ export function TimelineCard({ participantId, zone }: { participantId: string; z
           </View>
         ))}
       </View>
-      {list.hasNextPage ? <Button kind="quiet" label={t('timeline.more')} busy={list.isFetchingNextPage} onPress={() => void list.fetchNextPage()} /> : null}
+      {list.hasNextPage ? <Button kind="quiet" flush label={t('timeline.more')} busy={list.isFetchingNextPage} onPress={() => void list.fetchNextPage()} /> : null}
     </Card>
   );
 }

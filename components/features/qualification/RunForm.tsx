@@ -1,11 +1,13 @@
 /**
  * A file of worked cases, chosen and run, and its signed result as a file. It must not read the file but as text.
  */
-import { useId, useState } from 'react';
+import { useState } from 'react';
 import { useTranslation } from 'react-i18next';
 import { View } from 'react-native';
 import { useCall } from '@/components/runtime/api';
+import { saveFile } from '@/components/runtime/save-file';
 import { Button } from '@/components/ui/Button';
+import { FilePicker } from '@/components/ui/FilePicker';
 import { Notice } from '@/components/ui/Notice';
 import { Text } from '@/components/ui/Text';
 import { space } from '@/components/ui/theme';
@@ -18,16 +20,6 @@ type Ran = AnswerOf<typeof runQualification>;
 /** The whole request is 1 MB at most, and text grows a little on its way (own choice). */
 const bytesMost = 800_000;
 
-/** The file as the browser saves it. */
-function save(name: string, text: string): void {
-  const address = URL.createObjectURL(new Blob([text], { type: 'application/json' }));
-  const link = document.createElement('a');
-  link.href = address;
-  link.download = name;
-  link.click();
-  URL.revokeObjectURL(address);
-}
-
 /** Of a field the field's own sentence: it says what is wrong with the file. */
 function sentenceOf({ fields, detail }: Problem): string {
   return fields?.[0]?.message ?? detail;
@@ -35,7 +27,6 @@ function sentenceOf({ fields, detail }: Problem): string {
 
 export function RunForm({ siteId, siteName }: { siteId: string; siteName: string }) {
   const { t } = useTranslation('qualification');
-  const inputId = useId();
   const run = useCall(runQualification);
   const [file, setFile] = useState<File | null>(null);
   const isTooLarge = file !== null && file.size > bytesMost;
@@ -47,15 +38,12 @@ export function RunForm({ siteId, siteName }: { siteId: string; siteName: string
 
   return (
     <View style={{ gap: space[3], alignItems: 'flex-start' }}>
-      <label htmlFor={inputId}>
-        <Text weight="bold">{t('choose', { site: siteName })}</Text>
-      </label>
-      <input
-        id={inputId}
-        type="file"
+      <FilePicker
+        label={t('choose', { site: siteName })}
+        chosenName={file?.name ?? null}
         accept="application/json,.json"
-        onChange={(event) => {
-          setFile(event.target.files?.[0] ?? null);
+        onChoose={(chosen) => {
+          setFile(chosen);
           run.reset();
         }}
       />
@@ -92,7 +80,7 @@ function Outcome({ ran }: { ran: Ran }) {
       tone={failed === 0 ? 'steady' : 'stop'}
       title={t(failed === 0 ? 'allPassed' : 'someFailed', { passed, failed })}
       announce="assertive"
-      actions={<Button kind="secondary" label={t('download')} onPress={() => save(name, ran.signed)} />}
+      actions={<Button kind="secondary" label={t('download')} onPress={() => saveFile(name, 'application/json', ran.signed)} />}
     >
       {ran.failures.map(({ id, error }, index) => (
         <Text key={`${index} ${id}`} size="fine">

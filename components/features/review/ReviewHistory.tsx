@@ -48,7 +48,7 @@ export function ReviewHistory({ participantId }: { participantId: string }) {
           </View>
         ))}
         {list.hasNextPage ? (
-          <Button kind="quiet" label={t('history.older')} onPress={() => void list.fetchNextPage()} />
+          <Button kind="quiet" flush label={t('history.older')} onPress={() => void list.fetchNextPage()} />
         ) : null}
       </View>
     </Card>

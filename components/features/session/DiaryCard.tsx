@@ -29,7 +29,11 @@ export function DiaryCard({ title, diary, none, zone }: { title: string; diary: 
     <Card heading={title} aside={format.dayTime(diary.writtenAt)}>
       <View style={{ gap: space[4] }}>
         {diary.lockouts.map((lockout) => (
-          <Notice key={lockout.code} tone={lockout.level === 'flag' ? 'caution' : 'stop'} title={t(`worklist:why.${lockout.code}`)} />
+          <Notice
+            key={lockout.code}
+            {...(lockout.level === 'flag' ? { tone: 'caution' } : { tone: 'stop', word: t('participants:state.held') })}
+            title={t(`worklist:why.${lockout.code}`)}
+          />
         ))}
         <Definition layout="rows" rows={rowsOf(diary, t)} />
         {diary.after?.freeText ? <Text>{t('quoted', { text: diary.after.freeText })}</Text> : null}
@@ -51,7 +55,8 @@ function rowsOf(diary: DiaryView, t: ReturnType<typeof useTranslation>['t']): De
     return [
       { label: t('headacheAfter'), value: t('of10', { strength: after.headacheAfter }) },
       ...(after.nothingFelt ? [{ label: t('feltLabel'), value: t('nothing') }] : []),
-      ...after.effects.map((effect) => ({ label: t(`diary:effect.${effect.kind}`), value: t(effect.stillThere ? 'of10Still' : 'of10', { strength: effect.strength }) })),
+      // Said once: the headache has a row of its own above.
+      ...after.effects.filter(({ kind, strength }) => kind !== 'headache' || strength !== after.headacheAfter).map((effect) => ({ label: t(`diary:effect.${effect.kind}`), value: t(effect.stillThere ? 'of10Still' : 'of10', { strength: effect.strength }) })),
       { label: t('skinLabel'), value: t(`diary:skin.${after.skin}`) },
     ];
   }

@@ -23,7 +23,7 @@ function as(role: 'administrator' | 'monitor', runs: unknown[]): Server {
   });
 }
 const choose = (name: string, text: string) => {
-  const input = screen.getByLabelText('File of worked cases for Lantern Street Clinic');
+  const input = screen.getByLabelText('Choose a file of worked cases for Lantern Street Clinic');
   const file = Object.assign(new File([text], name, { type: 'application/json' }), { text: async () => text });
   fireEvent.change(input, { target: { files: [file] } });
 };
